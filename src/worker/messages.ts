@@ -1,0 +1,56 @@
+/** The one list of what a page (or a Node parent) can ask of an engine worker. Both ends are checked against it. */
+import type { SearchProgress, SearchRecord } from '../search/record.ts';
+import type { BasisSpec, SearchRequest } from '../search/request.ts';
+
+export interface ParsedValue {
+  /** Canonical decimal text, or the two parts of a complex number. */
+  readonly canonical: string;
+  readonly significantDigits: number;
+  readonly trustedDigits: number;
+  readonly notes: readonly string[];
+}
+
+export interface BasisElementView {
+  readonly text: string;
+  readonly latex: string;
+  readonly weight: number | null;
+  readonly family: string;
+}
+
+export interface EngineTasks {
+  /** Run one search to its record. */
+  search: { request: SearchRequest; response: SearchRecord; progress: SearchProgress };
+  /** Digits of a typed constant, correctly rounded. */
+  evaluate: {
+    request: { text: string; digits: number };
+    response: { digits: string; imaginary: string | null; latex: string; weight: number | null };
+    progress: { fraction: number };
+  };
+  /** Check typed constants and expand spaces without computing digits. */
+  basis: { request: { basis: BasisSpec }; response: { elements: readonly BasisElementView[] }; progress: never };
+  /** Recompute a record from itself alone. */
+  check: {
+    request: { record: unknown };
+    response: { ok: boolean; findings: readonly { what: string; ok: boolean; detail: string }[] };
+    progress: SearchProgress;
+  };
+}
+
+export type TaskName = keyof EngineTasks;
+
+export type ToWorker =
+  | { readonly kind: 'start'; readonly id: number; readonly task: TaskName; readonly request: unknown }
+  | { readonly kind: 'cancel'; readonly id: number };
+
+/** Errors cross as tagged data and are rebuilt with class and code on the other side. */
+export interface ErrorData {
+  readonly name: string;
+  readonly message: string;
+  readonly code: string | null;
+  readonly at: { offset: number; length: number; line: number; column: number } | null;
+}
+
+export type FromWorker =
+  | { readonly kind: 'progress'; readonly id: number; readonly progress: unknown }
+  | { readonly kind: 'done'; readonly id: number; readonly response: unknown }
+  | { readonly kind: 'failed'; readonly id: number; readonly error: ErrorData };

@@ -1,0 +1,227 @@
+/**
+ * Double tails (see double-tails.ts) for words with letters anywhere in the complex plane off the segment [0, 1].
+ *
+ * Let d(a) be the distance of a from [0, 1], and D the largest product of max(1, 1/d(a)) over the letters a ≠ 0, 1 of a core.
+ *
+ * **Truncation.** (1−t₁)ⁿ t_kⁿ ≤ 4^−n, and |dt/(a−t)| ≤ dt/d(a) where dt is below both dt/t and dt/(1−t); what is left is at
+ * most a convergent multiple zeta value, and these are at most ζ(2) < 2. So |J_n(w)| ≤ 2D·4^−n for every n, and with
+ * N ≥ (W + 1 + log2 D)/2 the start from zero is wrong by at most one unit.
+ *
+ * **Rounding.** The factor αβ = 1/((1 − a)b) of the recursion is a complex number in fixed point and may exceed 1. Let A be the
+ * largest of 1, all |αβ| and, for single letters, |β|. Errors divided by A^(N−n) obey the recursion of double-tails.ts:
+ * three truncated complex divisions add at most 3√2, the product √2 for its own truncation and at most 1 for the error of the
+ * factor, whose precision at step n is chosen from the bound on J_{n−1}; so ρ = 8 and
+ *
+ *   e(0) ≤ A^N (8N + 3) Σ_{j≤k} G^j/j!.
+ *
+ * The extra bits N·log2 A are the price of letters with |a(1 − a)| < 1. Letters with A ≥ 3.4 are refused here.
+ */
+import { type Ball, fromInteger, subtract, withBits } from '../../number/ball.ts';
+import { type ComplexBall, divide, isComplex, multiply, toComplex, type Value } from '../../number/complex.ts';
+import { roundShift } from '../../number/integer.ts';
+import type { EvaluationContext } from '../family.ts';
+import { centralInverses, powersOf, pulse, tailsRadius } from './double-tails.ts';
+import type { Plan } from './plan.ts';
+
+/** Letters by code − 2, to an absolute error of 2^−bits. */
+export type LetterSource = (bits: number) => readonly Value[];
+
+export interface GeneralSize {
+  readonly work: number;
+  readonly steps: number;
+  /** Proven bound of the modulus of the error of every answer, in units of 2^−work. */
+  readonly radius: bigint;
+  /** log2 of a bound for |J_{n−1}|·4^(n−1)/|αβ|, which sets the precision of the factors. */
+  readonly log2Bracket: number;
+  readonly guard: number;
+}
+
+const STEP = 8;
+const MAX_LOG2_GROWTH = 1.77;
+
+interface LetterShape {
+  readonly re: number;
+  readonly im: number;
+}
+
+/** The growth log2 A of a plan with these letters; Infinity when a letter lies on or next to the segment [0, 1]. */
+export function log2Growth(plan: Plan, letters: LetterSource): number {
+  return growthOf(plan, shapesOf(letters)).log2A;
+}
+
+function shapesOf(letters: LetterSource): LetterShape[] {
+  return letters(80).map((letter) => {
+    const { re, im } = toComplex(letter);
+    return { re: toNumber(re), im: toNumber(im) };
+  });
+}
+
+/** The midpoint as a double; right to about 2^−50 for |x| < 2^900. */
+export function toNumber(x: Ball): number {
+  return Number(roundShift(x.mid, x.bits - 100)) / 2 ** 100;
+}
+
+/** A little above the double error of every quantity here. */
+const SLACK = 1e-9;
+
+function growthOf(plan: Plan, shapes: readonly LetterShape[]): { log2A: number; log2D: number; log2Least: number } {
+  const shape = (code: number): LetterShape =>
+    code === 0 ? { re: 0, im: 0 } : code === 1 ? { re: 1, im: 0 } : (shapes[code - 2] as LetterShape);
+  const distance = ({ re, im }: LetterShape): number => Math.hypot(re < 0 ? re : re > 1 ? re - 1 : 0, im) - SLACK;
+  let log2A = 0;
+  let log2D = 0;
+  let log2Least = 0;
+  for (const { word, first, last } of plan.cores) {
+    const a = shape(first);
+    const b = shape(last);
+    const log2Alpha = first === 0 ? 0 : -Math.log2(Math.hypot(1 - a.re, a.im) - SLACK);
+    const log2Beta = last === 1 ? 0 : -Math.log2(Math.hypot(b.re, b.im) - SLACK);
+    const product = log2Alpha + log2Beta;
+    log2A = Math.max(log2A, product, word.length === 1 ? log2Beta : 0);
+    log2Least = Math.min(log2Least, product);
+    let size = 0;
+    for (const c of word) {
+      const code = c.charCodeAt(0) - 48;
+      if (code < 2) continue;
+      const d = distance(shape(code));
+      size += d > 0 ? Math.max(0, -Math.log2(d)) : Number.POSITIVE_INFINITY;
+    }
+    log2D = Math.max(log2D, size);
+  }
+  const bad = !Number.isFinite(log2D) || Number.isNaN(log2A);
+  return { log2A: bad ? Number.POSITIVE_INFINITY : log2A, log2D, log2Least };
+}
+
+/** Throws RangeError when the letters make the method useless (`log2Growth` tells beforehand). */
+export function generalSize(plan: Plan, letters: LetterSource, bits: number): GeneralSize {
+  const { log2A, log2D, log2Least } = growthOf(plan, shapesOf(letters));
+  if (log2A > MAX_LOG2_GROWTH)
+    throw new RangeError(`generalSize: expected letters away from [0, 1], got growth 2^${log2A}`);
+  for (let guard = 16; ; guard += 4) {
+    const work = bits + guard;
+    const steps = Math.ceil((work + 1 + log2D) / 2);
+    const log2Radius = tailsRadius(steps, plan.length, STEP) + steps * (log2A + SLACK);
+    if (log2Radius > guard) {
+      guard += Math.max(0, Math.floor((log2Radius - guard) / 8) * 4);
+      continue;
+    }
+    const log2Bracket = Math.ceil(1 + log2D - log2Least + SLACK);
+    return { work, steps, radius: 1n << BigInt(Math.ceil(log2Radius)), log2Bracket, guard };
+  }
+}
+
+/** Whether the letters keep the extra bits within the work itself. */
+export function tailsApply(log2A: number): boolean {
+  return log2A <= MAX_LOG2_GROWTH;
+}
+
+interface Factor {
+  readonly re: bigint;
+  readonly im: bigint;
+}
+
+/** J₀ of every core in units of 2^−work. */
+export function generalTails(
+  plan: Plan,
+  letters: LetterSource,
+  size: GeneralSize,
+  context: EvaluationContext,
+): { re: bigint[]; im: bigint[] } {
+  const { cores, quotients } = plan;
+  // At step n a factor with this many bits, less 2n, errs by at most 1/4 of 2^−(W − 2(n−1) + log2Bracket + 1).
+  const top = size.work + size.log2Bracket + 8 + size.guard;
+  const factors = factorsOf(plan, letters, top);
+  const empty = centralInverses(size.steps, size.work);
+  const re = cores.map(() => 0n);
+  const im = cores.map(() => 0n);
+  const shareRe = quotients.map(() => 0n);
+  const shareIm = quotients.map(() => 0n);
+  let current = factors;
+  let precision = top;
+  for (let n = size.steps; n >= 1; n--) {
+    if (n === size.steps || n % 16 === 0) {
+      const drop = Math.min(2 * Math.max(0, n - 16), size.work);
+      precision = top - drop;
+      current = factors.map(({ product, single }) => ({
+        product: truncated(product, drop),
+        single: single === null ? null : truncated(single, drop),
+      }));
+    }
+    const shift = BigInt(precision);
+    const powers = powersOf(n, plan.maxExponent);
+    for (let q = 0; q < quotients.length; q++) {
+      const { core, exponent } = quotients[q] as { core: number; exponent: number };
+      const divisor = powers[exponent] as bigint;
+      if (core < 0) shareRe[q] = (empty[n] as bigint) / divisor;
+      else {
+        shareRe[q] = (re[core] as bigint) / divisor;
+        shareIm[q] = (im[core] as bigint) / divisor;
+      }
+    }
+    for (let c = 0; c < cores.length; c++) {
+      let x = re[c] as bigint;
+      let y = im[c] as bigint;
+      const { product, single } = current[c] as { product: Factor; single: Factor | null };
+      const references = (cores[c] as Plan['cores'][number]).references;
+      if (single !== null) {
+        const share = shareRe[(references[0] as { quotient: number }).quotient] as bigint;
+        x -= share;
+        re[c] = (x * product.re - y * product.im + share * single.re) >> shift;
+        im[c] = (x * product.im + y * product.re + share * single.im) >> shift;
+        continue;
+      }
+      for (const { quotient, factor, conjugate } of references) {
+        const f = BigInt(factor);
+        x += f * (shareRe[quotient] as bigint);
+        y += (conjugate ? -f : f) * (shareIm[quotient] as bigint);
+      }
+      re[c] = (x * product.re - y * product.im) >> shift;
+      im[c] = (x * product.im + y * product.re) >> shift;
+    }
+    pulse(n, size.steps, context);
+  }
+  return { re, im };
+}
+
+function truncated(factor: Factor, drop: number): Factor {
+  const shift = BigInt(drop);
+  return { re: factor.re >> shift, im: factor.im >> shift };
+}
+
+/** αβ of every core and 2β of every single letter, with `bits` fraction bits and an error of at most two units in each part. */
+function factorsOf(plan: Plan, letters: LetterSource, bits: number): { product: Factor; single: Factor | null }[] {
+  const one = fromInteger(1n);
+  const table = letters(bits + 24);
+  const letter = (code: number): Value => (code < 2 ? fromInteger(BigInt(code)) : (table[code - 2] as Value));
+  const known = new Map<string, Factor>();
+  const fixed = (key: string, make: () => Value): Factor => {
+    const old = known.get(key);
+    if (old !== undefined) return old;
+    const { re, im } = toComplex(make());
+    const made = { re: fixedPoint(re, bits), im: fixedPoint(im, bits) };
+    known.set(key, made);
+    return made;
+  };
+  return plan.cores.map(({ word, first, last }) => {
+    const beta = (): Value => (last === 1 ? one : divide(one, letter(last), bits + 20));
+    const product = fixed(`${first},${last}`, () => {
+      if (first === 0) return beta();
+      return divide(beta(), subtractFromOne(letter(first)), bits + 12);
+    });
+    const single = word.length === 1 ? fixed(`2/${last}`, () => multiply(fromInteger(2n), beta(), bits + 12)) : null;
+    return { product, single };
+  });
+}
+
+function subtractFromOne(x: Value): Value {
+  const one = fromInteger(1n);
+  if (!isComplex(x)) return subtract(one, x);
+  const { re, im }: ComplexBall = x;
+  return { re: subtract(one, re), im: { mid: -im.mid, rad: im.rad, bits: im.bits } };
+}
+
+function fixedPoint(x: Ball, bits: number): bigint {
+  const ball = withBits(x, bits);
+  if (ball.rad > 2n) throw new RangeError('fixedPoint: expected letters precise enough for two units');
+  return ball.mid;
+}

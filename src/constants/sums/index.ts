@@ -1,0 +1,7 @@
+/** The families of nested sums and iterated integrals. */
+import type { Family } from '../family.ts';
+import { rootPolylogarithms } from './root-polylogarithms.ts';
+import { alternatingSums, multipleZeta } from './zeta-values.ts';
+
+// biome-ignore lint/suspicious/noExplicitAny: a list of families with different argument types
+export const sumFamilies: readonly Family<any>[] = [multipleZeta, alternatingSums, rootPolylogarithms];

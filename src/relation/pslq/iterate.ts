@@ -1,0 +1,192 @@
+/**
+ * PSLQ iterations in Float64: Ferguson, Bailey and Arno, "Analysis of PSLQ, an integer relation finding algorithm",
+ * Math. Comp. 68 (1999) 351, with several disjoint exchanges at once as in Bailey and Broadhurst, "Parallel integer relation
+ * detection: techniques and applications", Math. Comp. 70 (2001) 1719.
+ *
+ * The exact state is a unimodular matrix B (rows bᵢ) and residuals yᵢ = bᵢ·x. H is the lower triangular factor of
+ * (D·Dᵀ)⁻¹, where D has the rows [bᵢ | yᵢⱼ/ρⱼ]. Classical PSLQ is the limit ρ → 0, in which the last m diagonal entries
+ * vanish; ρ is lowered in stages instead, so that no multiplier ever exceeds what a double holds. Nothing here needs
+ * trusting: H only proposes unimodular steps, which are applied to the exact state.
+ */
+
+/** Numerics of one stage: n rows; `h` and `u` row-major n×n. */
+export interface Stage {
+  readonly n: number;
+  /** Lower triangular H. */
+  readonly h: Float64Array;
+  /** The unimodular transform found so far: new bᵢ = Σ uᵢⱼ·bⱼ. Integers below 2^53. */
+  readonly u: Float64Array;
+  /** Largest |uᵢⱼ| at any time. */
+  growth: number;
+}
+
+const GAMMA_LOG2 = Math.log2(2 / Math.sqrt(3));
+/** An exchange must shrink the diagonal entry by this factor: guarantees progress in spite of rounding. */
+const SHRINK = 0.99;
+/** Transforms stay below this, so that one more reduction step is exact in a double. */
+export const GROWTH_LIMIT = 2 ** 40;
+const STEP_LIMIT = 2 ** 50;
+
+/**
+ * H of the rows [bᵢ | yᵢ/ρ] (n rows of `width` doubles, destroyed): Householder LQ with the rows taken from the last to the first
+ * gives D·Dᵀ = R·Rᵀ with R upper triangular, and H = R⁻ᵀ. The rows must be scaled so that squares neither under- nor overflow.
+ * Returns undefined if a diagonal entry is not a positive finite number.
+ */
+export function factorH(rows: Float64Array, n: number, width: number): Float64Array | undefined {
+  const diagonal = new Float64Array(n);
+  for (let i = n - 1; i >= 0; i--) {
+    const first = n - 1 - i;
+    const base = i * width;
+    let norm = 0;
+    for (let k = first; k < width; k++) norm += (rows[base + k] as number) ** 2;
+    norm = Math.sqrt(norm);
+    if (!(norm > 0) || !Number.isFinite(norm)) return undefined;
+    const head = rows[base + first] as number;
+    const alpha = head > 0 ? -norm : norm;
+    // Householder vector, normalised so that its largest part is 1 and nothing under- or overflows.
+    rows[base + first] = head - alpha;
+    for (let k = first; k < width; k++) rows[base + k] = (rows[base + k] as number) / norm;
+    let square = 0;
+    for (let k = first; k < width; k++) square += (rows[base + k] as number) ** 2;
+    for (let r = 0; r < i; r++) {
+      const at = r * width;
+      let dot = 0;
+      for (let k = first; k < width; k++) dot += (rows[at + k] as number) * (rows[base + k] as number);
+      const scale = (2 * dot) / square;
+      for (let k = first; k < width; k++) rows[at + k] = (rows[at + k] as number) - scale * (rows[base + k] as number);
+    }
+    diagonal[i] = alpha;
+  }
+  return invertTransposed(rows, n, width, diagonal);
+}
+
+/** H = R⁻ᵀ, where R[i][j] (j > i) sits in rows[i·width + n−1−j] and R[i][i] in diagonal[i]. */
+function invertTransposed(rows: Float64Array, n: number, width: number, diagonal: Float64Array): Float64Array {
+  const h = new Float64Array(n * n);
+  // Σ_k H[i][k]·R[j][k] = δᵢⱼ with k from j to i.
+  for (let i = 0; i < n; i++) {
+    h[i * n + i] = 1 / (diagonal[i] as number);
+    for (let j = i - 1; j >= 0; j--) {
+      let sum = 0;
+      for (let k = j + 1; k <= i; k++) sum += (h[i * n + k] as number) * (rows[j * width + n - 1 - k] as number);
+      h[i * n + j] = -sum / (diagonal[j] as number);
+    }
+  }
+  return h;
+}
+
+export function newStage(h: Float64Array, n: number): Stage {
+  const u = new Float64Array(n * n);
+  for (let i = 0; i < n; i++) u[i * n + i] = 1;
+  return { n, h, u, growth: 1 };
+}
+
+/**
+ * Exchanges and reduces until no exchange helps ('done') or the transform has grown to its limit ('grown') or `limit`
+ * rounds have been made ('more'). Adds the rounds made to `count`.
+ */
+export function iterate(stage: Stage, limit: number, count: { rounds: number }): 'done' | 'grown' | 'more' {
+  for (let round = 0; round < limit; round++) {
+    if (!reduce(stage)) return 'grown';
+    const pairs = choosePairs(stage);
+    if (pairs.length === 0) return 'done';
+    count.rounds++;
+    for (const r of pairs) exchange(stage, r);
+    if (stage.growth > GROWTH_LIMIT) return 'grown';
+  }
+  return 'more';
+}
+
+/** Disjoint neighbours (r, r+1), best weight γ^r·|H_rr| first, whose exchange shrinks H_rr. */
+function choosePairs(stage: Stage): number[] {
+  const { n, h } = stage;
+  const order: { r: number; weight: number }[] = [];
+  for (let r = 0; r < n - 1; r++) {
+    const here = Math.abs(h[r * n + r] as number);
+    const below = (r + 1) * n + r;
+    const after = Math.sqrt((h[below] as number) ** 2 + (h[below + 1] as number) ** 2);
+    if (after < SHRINK * here) order.push({ r, weight: r * GAMMA_LOG2 + Math.log2(here) });
+  }
+  order.sort((a, b) => b.weight - a.weight || a.r - b.r);
+  const taken = new Uint8Array(n + 1);
+  const pairs: number[] = [];
+  for (const { r } of order) {
+    if (taken[r] || taken[r + 1]) continue;
+    taken[r] = 1;
+    taken[r + 1] = 1;
+    pairs.push(r);
+    if (pairs.length >= Math.max(1, 0.4 * n)) break;
+  }
+  return pairs;
+}
+
+function exchange(stage: Stage, r: number): void {
+  const { n, h, u } = stage;
+  const a = r * n;
+  const b = a + n;
+  for (let k = 0; k < n; k++) {
+    const t = u[a + k] as number;
+    u[a + k] = u[b + k] as number;
+    u[b + k] = t;
+  }
+  for (let k = 0; k <= r + 1; k++) {
+    const t = h[a + k] as number;
+    h[a + k] = h[b + k] as number;
+    h[b + k] = t;
+  }
+  const x = h[a + r] as number;
+  const y = h[a + r + 1] as number;
+  const d = Math.sqrt(x * x + y * y);
+  const c = x / d;
+  const s = y / d;
+  for (let i = r; i < n; i++) {
+    const at = i * n + r;
+    const p = h[at] as number;
+    const q = h[at + 1] as number;
+    h[at] = c * p + s * q;
+    h[at + 1] = c * q - s * p;
+  }
+  h[a + r + 1] = 0;
+}
+
+/** Hermite reduction: |H_ij| ≤ |H_jj|/2 for j < i. False when a multiplier would take the transform past exact doubles. */
+function reduce(stage: Stage): boolean {
+  const { n, h, u } = stage;
+  for (let i = 1; i < n; i++) {
+    for (let j = i - 1; j >= 0; j--) {
+      const ratio = (h[i * n + j] as number) / (h[j * n + j] as number);
+      if (ratio <= 0.501 && ratio >= -0.501) continue;
+      const t = Math.round(Math.max(-GROWTH_LIMIT, Math.min(GROWTH_LIMIT, ratio)));
+      if (Math.abs(t) * stage.growth > STEP_LIMIT) return false;
+      for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
+      let top = stage.growth;
+      for (let k = 0; k < n; k++) {
+        const value = (u[j * n + k] as number) + t * (u[i * n + k] as number);
+        u[j * n + k] = value;
+        const size = Math.abs(value);
+        if (size > top) top = size;
+      }
+      stage.growth = top;
+    }
+  }
+  return true;
+}
+
+/** log2 of the largest |H_jj|: every vector of the lattice spanned by the rows [bᵢ | yᵢ/ρ] is at least 2^−this long. */
+export function log2MaxDiagonal(h: Float64Array, n: number): number {
+  let top = 0;
+  for (let i = 0; i < n; i++) top = Math.max(top, Math.abs(h[i * n + i] as number));
+  return Math.log2(top);
+}
+
+/** log2 of the largest ratio |H_jj|/|H_ii|, j < i: what a recomputation of H loses in relative accuracy. */
+export function log2Drop(h: Float64Array, n: number): number {
+  let top = Math.abs(h[0] as number);
+  let drop = 1;
+  for (let i = 1; i < n; i++) {
+    const here = Math.abs(h[i * n + i] as number);
+    drop = Math.max(drop, top / here);
+    top = Math.max(top, here);
+  }
+  return Math.log2(drop);
+}

@@ -1,0 +1,115 @@
+/**
+ * The PSLQ method as a generator: it yields between pieces of work of at most a few milliseconds and returns the candidate
+ * that ended it. Deterministic.
+ *
+ * Three levels: iterations in Float64 (iterate.ts), their transforms collected and applied to the exact integers
+ * (state.ts), and H recomputed from the exact integers, so that rounding never accumulates.
+ */
+import { absolute, bitLength } from '../../number/integer.ts';
+import type { Prepared } from '../prepare.ts';
+import { factorH, iterate, log2Drop, log2MaxDiagonal, newStage } from './iterate.ts';
+import { doubleRows, type ExactState, transformedRow } from './state.ts';
+
+export interface PslqProgress {
+  fraction: number;
+  iterations: number;
+  normBoundLog10: number;
+}
+
+export type PslqEnd =
+  /** Row `index` of the state vanishes within the errors and passed `accept`. */
+  | { readonly kind: 'candidate'; readonly index: number }
+  /** The norm bound in doubles has reached the limit asked for. */
+  | { readonly kind: 'bounded' }
+  /** All digits are used. */
+  | { readonly kind: 'exhausted' };
+
+export interface PslqOptions {
+  /** Whether a vector that vanishes within the errors is to end the search. */
+  readonly accept: (coefficients: readonly bigint[]) => boolean;
+  readonly maxNormLog10: number;
+}
+
+/** Multipliers of one stage stay near 2^this: what a double carries minus room for rounding. */
+const STAGE_BITS = 30;
+
+/** log2 of the weight 1/ρ is lowered from the size of the column to the size of its errors. */
+export interface Weights {
+  readonly start: readonly number[];
+  readonly end: readonly number[];
+}
+
+/** log2 ρ at the beginning and at the end of the search, per column: largest |x|, and ‖errors‖ (a 64th of a unit if exact). */
+export function weightRange(prepared: Prepared): Weights {
+  const start = prepared.columns.map((_, j) => Math.max(...prepared.integers.map((x) => bitLength(x[j] as bigint))));
+  const end = prepared.columns.map((_, j) => {
+    let square = 0n;
+    for (const e of prepared.errors) square += (e[j] as bigint) ** 2n;
+    return square === 0n ? -6 : bitLength(square) / 2;
+  });
+  return { start, end };
+}
+
+export function* pslq(
+  prepared: Prepared,
+  state: ExactState,
+  options: PslqOptions,
+  progress: PslqProgress,
+): Generator<void, PslqEnd, void> {
+  const { start, end } = weightRange(prepared);
+  const total = Math.max(...start.map((s, j) => s - (end[j] as number)));
+  const weightsAt = (fed: number): number[] => start.map((s, j) => s - ((s - (end[j] as number)) * fed) / total);
+  const count = { rounds: 0 };
+  let fed = 0;
+  for (;;) {
+    const { rows, exponent } = doubleRows(state, weightsAt(fed));
+    const h = factorH(rows, state.n, state.n + state.m);
+    if (h === undefined) return { kind: 'exhausted' };
+    const stage = newStage(h, state.n);
+    let status = iterate(stage, 4, count);
+    while (status === 'more') {
+      yield;
+      status = iterate(stage, 4, count);
+    }
+    yield* apply(state, stage.u);
+    progress.iterations = count.rounds;
+    progress.fraction = Math.min(1, fed / total);
+    const bound = exponent - log2MaxDiagonal(h, state.n);
+    progress.normBoundLog10 = (bound - Math.log2(1 + state.m * 4 ** (fed - total)) / 2) * Math.log10(2);
+    const index = vanishing(prepared, state, options);
+    if (index >= 0) return { kind: 'candidate', index };
+    if (status !== 'done') continue;
+    if (progress.normBoundLog10 > options.maxNormLog10 + 0.01) return { kind: 'bounded' };
+    if (fed >= total) return { kind: 'exhausted' };
+    fed = Math.min(total, fed + Math.max(2, STAGE_BITS - log2Drop(h, state.n)));
+  }
+}
+
+function* apply(state: ExactState, u: Float64Array): Generator<void, void, void> {
+  const basis: bigint[][] = [];
+  const residuals: bigint[][] = [];
+  for (let i = 0; i < state.n; i++) {
+    basis.push(transformedRow(u, state.n, i, state.basis));
+    residuals.push(transformedRow(u, state.n, i, state.residuals));
+    if (i % 8 === 7) yield;
+  }
+  state.basis = basis;
+  state.residuals = residuals;
+}
+
+/** The first acceptable row whose residuals are all within what the errors allow; −1 if there is none. */
+function vanishing(prepared: Prepared, state: ExactState, options: PslqOptions): number {
+  for (let i = 0; i < state.n; i++) {
+    const row = state.basis[i] as bigint[];
+    const small = (state.residuals[i] as bigint[]).every((y, j) => {
+      if (y === 0n) return true;
+      let allowed = 0n;
+      row.forEach((c, k) => {
+        if (c !== 0n) allowed += absolute(c) * (prepared.errors[k]?.[j] as bigint);
+      });
+      return absolute(y) <= allowed;
+    });
+    if (small && options.accept(row)) return i;
+  }
+  return -1;
+}

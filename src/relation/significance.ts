@@ -1,0 +1,59 @@
+/** Could this relation be chance? Counting arguments shared by both methods. */
+import { absolute, log10Of } from '../number/integer.ts';
+import type { Prepared } from './prepare.ts';
+
+/**
+ * A candidate is called a relation only when chance would give fewer than 10^−this such vectors. Below it the digits
+ * have run out: something of this size vanishes to this accuracy for almost any numbers.
+ */
+export const SURPLUS_DIGITS = 5;
+
+/** log10 of the volume of the unit ball in n dimensions, from V(n) = V(n−2)·2π/n. */
+export function log10BallVolume(n: number): number {
+  let log = n % 2 === 0 ? 0 : Math.log10(2);
+  for (let k = n % 2 === 0 ? 2 : 3; k <= n; k += 2) log += Math.log10((2 * Math.PI) / k);
+  return log;
+}
+
+/**
+ * −log10 of the expected number of integer vectors that are as short as c and vanish to the accuracy of the numbers by
+ * chance. Vectors of norm at most N are counted by the volume of a ball of radius² N² + n/12 (each integer point
+ * carries its unit cube); the sums c·x of column j are taken as normal with variance N²|x|²/(n + 2).
+ * A heuristic, good to about a digit; never part of a proof.
+ */
+export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[]): number {
+  const n = coefficients.length;
+  const normLog10 = log10Norm(coefficients);
+  const widened = normLog10 > 8 ? normLog10 : Math.log10(10 ** (2 * normLog10) + n / 12) / 2;
+  let log = log10BallVolume(n) + n * widened;
+  prepared.columns.forEach((_, j) => {
+    let error = 1n;
+    let size = 0n;
+    coefficients.forEach((c, i) => {
+      error += absolute(c) * (prepared.errors[i]?.[j] as bigint);
+      const x = prepared.integers[i]?.[j] as bigint;
+      size += x * x;
+    });
+    const spread = normLog10 + log10Of(size) / 2 - Math.log10(n + 2) / 2;
+    log += Math.min(0, log10Of(error) + Math.log10(2) - spread - Math.log10(2 * Math.PI) / 2);
+  });
+  return -log;
+}
+
+export function log10Norm(coefficients: readonly bigint[]): number {
+  return log10Of(coefficients.reduce((sum, c) => sum + c * c, 0n)) / 2;
+}
+
+/** The vector divided by its content, first non-zero entry positive. */
+export function primitive(coefficients: readonly bigint[]): bigint[] {
+  let content = 0n;
+  for (const c of coefficients) {
+    let [a, b] = [content, absolute(c)];
+    while (b !== 0n) [a, b] = [b, a % b];
+    content = a;
+  }
+  if (content === 0n) throw new RangeError('primitive: expected a non-zero vector');
+  const first = coefficients.find((c) => c !== 0n) as bigint;
+  const divisor = first < 0n ? -content : content;
+  return coefficients.map((c) => c / divisor);
+}

@@ -1,7 +1,13 @@
 /** The families of nested sums and iterated integrals. */
 import type { Family } from '../family.ts';
+import { centralBinomialSums } from './central-binomial.ts';
 import { rootPolylogarithms } from './root-polylogarithms.ts';
 import { alternatingSums, multipleZeta } from './zeta-values.ts';
 
 // biome-ignore lint/suspicious/noExplicitAny: a list of families with different argument types
-export const sumFamilies: readonly Family<any>[] = [multipleZeta, alternatingSums, rootPolylogarithms];
+export const sumFamilies: readonly Family<any>[] = [
+  multipleZeta,
+  alternatingSums,
+  rootPolylogarithms,
+  centralBinomialSums,
+];

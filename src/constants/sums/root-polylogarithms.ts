@@ -75,7 +75,7 @@ export const rootPolylogarithms: Family<RootPolylogArgs> = {
     'Definition: Goncharov, Math. Res. Lett. 5 (1998) 497; Borwein, Bradley, Broadhurst and Lisoněk, Trans. AMS 353 (2001) 907. Method: Akhilesh, J. Number Theory 170 (2017) 228, extended to roots of unity.',
   examples: [
     'MPL(2,1;r6,1)',
-    'MPL(3,1;r6^2,-1)',
+    'MPL(3,1;r3,-1)',
     'MPL(2,1;i,1)',
     'MPL(3,1,2;r6,r6,1)',
     'MPL(2,1;r8,1)',

@@ -1,6 +1,7 @@
 /** The entry point of the relation engine: one request, one run in steps, one outcome. */
 import { InputError } from '../number/errors.ts';
 import { bitLength, log10Of } from '../number/integer.ts';
+import { certifyNormBound, type NormBound } from './bound.ts';
 import type { RelationOutcome, RelationProgress, RelationRequest, RelationRun } from './contract.ts';
 import { mayVanish, type Prepared, prepare } from './prepare.ts';
 import { pslq } from './pslq/search.ts';
@@ -57,10 +58,22 @@ function* search(
   }
   const state = initialState(prepared);
   const maxNormLog10 = request.maxNormLog10 ?? Number.POSITIVE_INFINITY;
-  const accept = (c: readonly bigint[]): boolean =>
-    surplusDigits(prepared, c) >= SURPLUS_DIGITS && mayVanish(prepared.rows, c);
-  const end = yield* pslq(prepared, state, { accept, maxNormLog10 }, progress);
-  const { iterations, normBoundLog10 } = progress;
+  // The last rows of a PSLQ state are orthogonalised first.
+  const certify = (weights: readonly number[]): NormBound =>
+    certifyNormBound(prepared, [...state.basis].reverse(), weights);
+  const end = yield* pslq(
+    prepared,
+    state,
+    {
+      accept: (c) => surplusDigits(prepared, c) >= SURPLUS_DIGITS && mayVanish(prepared.rows, c),
+      maxNormLog10,
+      bounded: (weights) => certify(weights).normBoundLog10 >= maxNormLog10,
+    },
+    progress,
+  );
+  const { normBoundLog10 } = certify(end.weights);
+  const { iterations } = progress;
+  progress.normBoundLog10 = normBoundLog10;
   if (end.kind === 'candidate') {
     const coefficients = primitive(state.basis[end.index] as bigint[]);
     return {

@@ -16,36 +16,42 @@ export interface PslqProgress {
   normBoundLog10: number;
 }
 
-export type PslqEnd =
-  /** Row `index` of the state vanishes within the errors and passed `accept`. */
+/** How the search ended, with the weights (log2 ρ per column) at which the state is then reduced. */
+export type PslqEnd = { readonly weights: readonly number[] } & (
   | { readonly kind: 'candidate'; readonly index: number }
-  /** The norm bound in doubles has reached the limit asked for. */
+  /** The norm bound asked for is proved. */
   | { readonly kind: 'bounded' }
   /** All digits are used. */
-  | { readonly kind: 'exhausted' };
+  | { readonly kind: 'exhausted' }
+);
 
 export interface PslqOptions {
   /** Whether a vector that vanishes within the errors is to end the search. */
   readonly accept: (coefficients: readonly bigint[]) => boolean;
   readonly maxNormLog10: number;
+  /** Asked when the bound in doubles has passed maxNormLog10: whether it can be proved at these weights. */
+  readonly bounded: (weightsLog2: readonly number[]) => boolean;
 }
 
 /** Multipliers of one stage stay near 2^this: what a double carries minus room for rounding. */
 const STAGE_BITS = 30;
 
-/** log2 of the weight 1/ρ is lowered from the size of the column to the size of its errors. */
+/** log2 ρ, integers, per column, at the beginning and at the end of a search. */
 export interface Weights {
   readonly start: readonly number[];
   readonly end: readonly number[];
 }
 
-/** log2 ρ at the beginning and at the end of the search, per column: largest |x|, and ‖errors‖ (a 64th of a unit if exact). */
+/**
+ * ρ begins at the largest |x| and ends at twice ‖errors‖ (so that the errors cost the norm bound a factor √(1 + m/4) at most),
+ * or at a 64th of a unit where the numbers are exact.
+ */
 export function weightRange(prepared: Prepared): Weights {
   const start = prepared.columns.map((_, j) => Math.max(...prepared.integers.map((x) => bitLength(x[j] as bigint))));
   const end = prepared.columns.map((_, j) => {
     let square = 0n;
     for (const e of prepared.errors) square += (e[j] as bigint) ** 2n;
-    return square === 0n ? -6 : bitLength(square) / 2;
+    return square === 0n ? -6 : Math.ceil(bitLength(square) / 2) + 1;
   });
   return { start, end };
 }
@@ -58,13 +64,15 @@ export function* pslq(
 ): Generator<void, PslqEnd, void> {
   const { start, end } = weightRange(prepared);
   const total = Math.max(...start.map((s, j) => s - (end[j] as number)));
-  const weightsAt = (fed: number): number[] => start.map((s, j) => s - ((s - (end[j] as number)) * fed) / total);
+  const weightsAt = (fed: number): number[] =>
+    start.map((s, j) => s - Math.round(((s - (end[j] as number)) * fed) / total));
   const count = { rounds: 0 };
   let fed = 0;
   for (;;) {
-    const { rows, exponent } = doubleRows(state, weightsAt(fed));
+    const weights = weightsAt(fed);
+    const { rows, exponent } = doubleRows(state, weights);
     const h = factorH(rows, state.n, state.n + state.m);
-    if (h === undefined) return { kind: 'exhausted' };
+    if (h === undefined) return { kind: 'exhausted', weights };
     const stage = newStage(h, state.n);
     let status = iterate(stage, 4, count);
     while (status === 'more') {
@@ -74,14 +82,14 @@ export function* pslq(
     yield* apply(state, stage.u);
     progress.iterations = count.rounds;
     progress.fraction = Math.min(1, fed / total);
-    const bound = exponent - log2MaxDiagonal(h, state.n);
-    progress.normBoundLog10 = (bound - Math.log2(1 + state.m * 4 ** (fed - total)) / 2) * Math.log10(2);
-    const index = vanishing(prepared, state, options);
-    if (index >= 0) return { kind: 'candidate', index };
     if (status !== 'done') continue;
-    if (progress.normBoundLog10 > options.maxNormLog10 + 0.01) return { kind: 'bounded' };
-    if (fed >= total) return { kind: 'exhausted' };
-    fed = Math.min(total, fed + Math.max(2, STAGE_BITS - log2Drop(h, state.n)));
+    const bound = exponent - log2MaxDiagonal(h, state.n) - Math.log2(1 + (state.m / 4) * 4 ** (fed - total)) / 2;
+    progress.normBoundLog10 = Math.max(0, bound * Math.log10(2));
+    const index = vanishing(prepared, state, options);
+    if (index >= 0) return { kind: 'candidate', index, weights };
+    if (progress.normBoundLog10 > options.maxNormLog10 && options.bounded(weights)) return { kind: 'bounded', weights };
+    if (fed >= total) return { kind: 'exhausted', weights };
+    fed = Math.min(total, fed + Math.max(2, Math.floor(STAGE_BITS - log2Drop(h, state.n))));
   }
 }
 

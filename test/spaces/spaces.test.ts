@@ -20,7 +20,7 @@ describe('spaces', () => {
     expect(dimensions('alternating')).toEqual([1, 1, 2, 3, 5, 8, 13, 21, 34]);
     expect(dimensions('fourth-roots')).toEqual([1, 2, 4, 8, 16, 32, 64]);
     expect(dimensions('sixth-roots-unramified')).toEqual([1, 1, 2, 3, 5, 8, 13, 21, 34]);
-    expect(dimensions('sixth-roots').slice(0, 4)).toEqual([1, 3, 8, 21]);
+    expect(dimensions('sixth-roots')).toEqual([1, 3, 8, 21, 55]);
   });
 
   it('lays out products by weight, lower weights and parity', () => {
@@ -51,8 +51,8 @@ describe('spaces', () => {
       expect(count('fourth-roots', weight, 'real')).toBe(2 ** (weight - 1));
       expect(count('fourth-roots', weight, 'imaginary')).toBe(2 ** (weight - 1));
     }
-    expect([1, 2, 3].map((w) => count('sixth-roots', w, 'real'))).toEqual([2, 5, 12]);
-    expect([1, 2, 3].map((w) => count('sixth-roots', w, 'imaginary'))).toEqual([1, 3, 9]);
+    expect([1, 2, 3, 4].map((w) => count('sixth-roots', w, 'real'))).toEqual([2, 5, 12, 30]);
+    expect([1, 2, 3, 4].map((w) => count('sixth-roots', w, 'imaginary'))).toEqual([1, 3, 9, 25]);
   });
 
   it('refuses unknown spaces and weights out of range', () => {

@@ -4,6 +4,13 @@ import type { Generator, Parity, Space, SpaceOptions } from './space.ts';
 export interface Product {
   readonly text: string;
   readonly parity: Parity;
+  /** The generators that occur, each with the number of its steps. */
+  readonly powers: readonly GeneratorPower[];
+}
+
+export interface GeneratorPower {
+  readonly generator: Generator;
+  readonly count: number;
 }
 
 /**
@@ -12,21 +19,29 @@ export interface Product {
  */
 export function productsOf(generators: readonly Generator[], weight: number): readonly Product[] {
   const found: Product[] = [];
-  const extend = (index: number, left: number, factors: readonly string[], odd: boolean): void => {
+  const extend = (index: number, left: number, powers: readonly GeneratorPower[]): void => {
     if (left === 0) {
-      found.push({ text: factors.length === 0 ? '1' : factors.join('*'), parity: odd ? 'imaginary' : 'real' });
+      found.push(productOf(powers));
       return;
     }
     const generator = generators[index];
     if (generator === undefined) return;
     for (let count = Math.floor(left / generator.weight); count >= 0; count--) {
-      const factor = count === 0 ? [] : [powerText(generator.text, count * (generator.step ?? 1))];
-      const flips = generator.parity === 'imaginary' && count % 2 === 1;
-      extend(index + 1, left - count * generator.weight, [...factors, ...factor], odd !== flips);
+      extend(index + 1, left - count * generator.weight, count === 0 ? powers : [...powers, { generator, count }]);
     }
   };
-  extend(0, weight, [], false);
+  extend(0, weight, []);
   return found;
+}
+
+function productOf(powers: readonly GeneratorPower[]): Product {
+  const factors = powers.map(({ generator, count }) => powerText(generator.text, count * (generator.step ?? 1)));
+  const flips = powers.filter(({ generator, count }) => generator.parity === 'imaginary' && count % 2 === 1);
+  return {
+    text: factors.length === 0 ? '1' : factors.join('*'),
+    parity: flips.length % 2 === 1 ? 'imaginary' : 'real',
+    powers,
+  };
 }
 
 function powerText(base: string, exponent: number): string {

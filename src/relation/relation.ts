@@ -1,12 +1,12 @@
 /** The entry point of the relation engine: one request, one run in steps, one outcome. */
 import { InputError } from '../number/errors.ts';
-import { bitLength, log10Of } from '../number/integer.ts';
+import { log10Of } from '../number/integer.ts';
 import { certifyNormBound, type NormBound } from './bound.ts';
 import type { RelationOutcome, RelationProgress, RelationRequest, RelationRun } from './contract.ts';
 import { mayVanish, type Prepared, prepare } from './prepare.ts';
 import { pslq } from './pslq/search.ts';
 import { type ExactState, initialState } from './pslq/state.ts';
-import { primitive, SURPLUS_DIGITS, surplusDigits } from './significance.ts';
+import { primitive, SURPLUS_DIGITS, surplusDigits, withinErrors } from './significance.ts';
 
 /** Work between two looks at the clock is a few milliseconds; a step ends at the first look past this many. */
 const STEP_MILLISECONDS = 5;
@@ -79,7 +79,7 @@ function* search(
     return {
       kind: 'relation',
       coefficients,
-      confidenceLog10: confidence(state, end.index),
+      confidenceLog10: confidence(prepared, state, end.index),
       normBoundLog10,
       iterations,
     };
@@ -89,11 +89,17 @@ function* search(
   return { kind: 'inconclusive', reason: shortage(prepared, request.maxNormLog10 ?? 1), normBoundLog10, iterations };
 }
 
-/** log10 of the second smallest residual over the smallest (at least one unit); all columns together. */
-function confidence(state: ExactState, index: number): number {
-  const sizes = state.residuals.map((row) => log10Of(row.reduce((s, y) => s + y * y, 0n)) / 2);
-  const second = Math.min(...sizes.filter((_, i) => i !== index));
-  return Math.max(0, Math.max(0, second) - Math.max(0, sizes[index] as number));
+/**
+ * log10 of the smallest residual that does not vanish within the errors over the one of the relation (at least one unit);
+ * all columns together. 0 when every row vanishes.
+ */
+function confidence(prepared: Prepared, state: ExactState, index: number): number {
+  const size = (i: number): number => log10Of((state.residuals[i] as bigint[]).reduce((s, y) => s + y * y, 0n)) / 2;
+  const others = state.basis
+    .map((_, i) => i)
+    .filter((i) => !withinErrors(prepared, state.basis[i] as bigint[], state.residuals[i] as bigint[]));
+  if (others.length === 0) return 0;
+  return Math.max(0, Math.min(...others.map(size)) - Math.max(0, size(index)));
 }
 
 /** About how many digits a search of n numbers in m columns needs to rule out every norm up to 10^maxNormLog10. */
@@ -108,9 +114,4 @@ function shortage(prepared: Prepared, maxNormLog10: number): string {
   const have = Math.floor(Math.min(...prepared.precisionBits) * Math.log10(2));
   const need = Math.max(digitsNeeded(n, m, maxNormLog10), have + 1);
   return `The digits ran out: ${have} right digits cannot decide about relations of ${n} numbers with norm up to 10^${maxNormLog10.toPrecision(3)}; about ${need} would be needed.`;
-}
-
-/** Bits of the largest entry of the exact basis; for tests and tuning. */
-export function basisBits(state: ExactState): number {
-  return Math.max(...state.basis.flat().map(bitLength));
 }

@@ -19,15 +19,17 @@ export function log10BallVolume(n: number): number {
  * −log10 of the expected number of integer vectors that are as short as c and vanish to the accuracy of the numbers by
  * chance. Vectors of norm at most N are counted by the volume of a ball of radius² N² + n/12 (each integer point
  * carries its unit cube); the sums c·x of column j are taken as normal with variance N²|x|²/(n + 2).
- * A heuristic, good to about a digit; never part of a proof.
+ * A heuristic, good to about a digit; never part of a proof. Infinity when the numbers that take part are exact: then
+ * there is no chance about it.
  */
 export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[]): number {
   const n = coefficients.length;
   const normLog10 = log10Norm(coefficients);
   const widened = normLog10 > 8 ? normLog10 : Math.log10(10 ** (2 * normLog10) + n / 12) / 2;
   let log = log10BallVolume(n) + n * widened;
+  let exact = true;
   prepared.columns.forEach((_, j) => {
-    let error = 1n;
+    let error = 0n;
     let size = 0n;
     coefficients.forEach((c, i) => {
       error += absolute(c) * (prepared.errors[i]?.[j] as bigint);
@@ -35,9 +37,26 @@ export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[
       size += x * x;
     });
     const spread = normLog10 + log10Of(size) / 2 - Math.log10(n + 2) / 2;
-    log += Math.min(0, log10Of(error) + Math.log10(2) - spread - Math.log10(2 * Math.PI) / 2);
+    if (error > 0n) exact = false;
+    log += Math.min(0, log10Of(error + 1n) + Math.log10(2) - spread - Math.log10(2 * Math.PI) / 2);
   });
-  return -log;
+  return exact ? Number.POSITIVE_INFINITY : -log;
+}
+
+/** Whether residuals of the given coefficients are all within what the errors of the numbers allow. */
+export function withinErrors(
+  prepared: Prepared,
+  coefficients: readonly bigint[],
+  residuals: readonly bigint[],
+): boolean {
+  return residuals.every((y, j) => {
+    if (y === 0n) return true;
+    let allowed = 0n;
+    coefficients.forEach((c, k) => {
+      if (c !== 0n) allowed += absolute(c) * (prepared.errors[k]?.[j] as bigint);
+    });
+    return absolute(y) <= allowed;
+  });
 }
 
 export function log10Norm(coefficients: readonly bigint[]): number {

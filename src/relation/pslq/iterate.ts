@@ -16,24 +16,42 @@ export interface Stage {
   readonly h: Float64Array;
   /** The unimodular transform found so far: new bᵢ = Σ uᵢⱼ·bⱼ. Integers below 2^53. */
   readonly u: Float64Array;
-  /** Largest |uᵢⱼ| at any time. */
-  growth: number;
+  /** Absolute uncertainty of row i of D, from rounding: multipliers that it drowns are not worth making. */
+  readonly noise: Float64Array;
+  /** Largest |uᵢⱼ| of row i. */
+  readonly growth: Float64Array;
+}
+
+/** H with the rounding level of the rows it came from. */
+export interface Factor {
+  readonly h: Float64Array;
+  readonly noise: Float64Array;
 }
 
 const GAMMA_LOG2 = Math.log2(2 / Math.sqrt(3));
 /** An exchange must shrink the diagonal entry by this factor: guarantees progress in spite of rounding. */
 const SHRINK = 0.99;
 /** Transforms stay below this, so that one more reduction step is exact in a double. */
-export const GROWTH_LIMIT = 2 ** 40;
-const STEP_LIMIT = 2 ** 50;
+const GROWTH_LIMIT = 2 ** 40;
+const EXACT_LIMIT = 2 ** 52;
+/** A multiplier above this waits until no exchange is left: it often vanishes when the rows it acts on have become shorter. */
+const PATIENCE_LIMIT = 2 ** 20;
+/** Relative error of a row after the factorisation (Householder: a few n·u in practice). */
+const ROW_NOISE = 2 ** -48;
 
 /**
  * H of the rows [bᵢ | yᵢ/ρ] (n rows of `width` doubles, destroyed): Householder LQ with the rows taken from the last to the first
  * gives D·Dᵀ = R·Rᵀ with R upper triangular, and H = R⁻ᵀ. The rows must be scaled so that squares neither under- nor overflow.
  * Returns undefined if a diagonal entry is not a positive finite number.
  */
-export function factorH(rows: Float64Array, n: number, width: number): Float64Array | undefined {
+export function factorH(rows: Float64Array, n: number, width: number): Factor | undefined {
   const diagonal = new Float64Array(n);
+  const noise = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    let square = 0;
+    for (let k = 0; k < width; k++) square += (rows[i * width + k] as number) ** 2;
+    noise[i] = ROW_NOISE * Math.sqrt(square);
+  }
   for (let i = n - 1; i >= 0; i--) {
     const first = n - 1 - i;
     const base = i * width;
@@ -57,7 +75,7 @@ export function factorH(rows: Float64Array, n: number, width: number): Float64Ar
     }
     diagonal[i] = alpha;
   }
-  return invertTransposed(rows, n, width, diagonal);
+  return { h: invertTransposed(rows, n, width, diagonal), noise };
 }
 
 /** H = R⁻ᵀ, where R[i][j] (j > i) sits in rows[i·width + n−1−j] and R[i][i] in diagonal[i]. */
@@ -75,26 +93,49 @@ function invertTransposed(rows: Float64Array, n: number, width: number, diagonal
   return h;
 }
 
-export function newStage(h: Float64Array, n: number): Stage {
+export function newStage({ h, noise }: Factor, n: number): Stage {
   const u = new Float64Array(n * n);
   for (let i = 0; i < n; i++) u[i * n + i] = 1;
-  return { n, h, u, growth: 1 };
+  return { n, h, u, noise, growth: new Float64Array(n).fill(1) };
 }
 
 /**
- * Exchanges and reduces until no exchange helps ('done') or the transform has grown to its limit ('grown') or `limit`
- * rounds have been made ('more'). Adds the rounds made to `count`.
+ * Exchanges and reduces until no exchange helps ('done'), or only multipliers too large for the transform are left ('wide'),
+ * or the transform has grown to its limit ('grown'), or `limit` rounds have been made ('more'). Adds the rounds made to `count`.
  */
-export function iterate(stage: Stage, limit: number, count: { rounds: number }): 'done' | 'grown' | 'more' {
+export function iterate(stage: Stage, limit: number, count: { rounds: number }): 'done' | 'wide' | 'grown' | 'more' {
   for (let round = 0; round < limit; round++) {
-    if (!reduce(stage)) return 'grown';
+    const reduced = reduce(stage);
     const pairs = choosePairs(stage);
-    if (pairs.length === 0) return 'done';
+    if (pairs.length === 0) return reduced ? 'done' : 'wide';
     count.rounds++;
     for (const r of pairs) exchange(stage, r);
-    if (stage.growth > GROWTH_LIMIT) return 'grown';
+    if (stage.growth.some((size) => size > GROWTH_LIMIT)) return 'grown';
   }
   return 'more';
+}
+
+/**
+ * Hermite reduction with multipliers of any size: `act(i, j, t)` must do b_j += t·b_i exactly, t an integer of any size in a double.
+ * Only for rows whose lengths differ by more than a transform in doubles can bridge.
+ */
+export function reduceWide({ h, noise }: Factor, n: number, act: (i: number, j: number, t: number) => void): void {
+  for (let i = 1; i < n; i++) {
+    for (let j = i - 1; j >= 0; j--) {
+      const ratio = (h[i * n + j] as number) / (h[j * n + j] as number);
+      if (!significant(ratio, h[i * n + i] as number, noise[j] as number)) continue;
+      const t = Math.round(ratio);
+      for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
+      noise[j] = (noise[j] as number) + Math.abs(t) * (noise[i] as number);
+      act(i, j, t);
+    }
+  }
+}
+
+/** Whether a multiplier is worth making: above a half, and above what rounding of row j leaves uncertain. */
+function significant(ratio: number, diagonal: number, noise: number): boolean {
+  const size = Math.abs(ratio);
+  return size > 0.501 && size > 4 * Math.abs(diagonal) * noise;
 }
 
 /** Disjoint neighbours (r, r+1), best weight γ^r·|H_rr| first, whose exchange shrinks H_rr. */
@@ -124,6 +165,11 @@ function exchange(stage: Stage, r: number): void {
   const { n, h, u } = stage;
   const a = r * n;
   const b = a + n;
+  for (const list of [stage.noise, stage.growth]) {
+    const t = list[r] as number;
+    list[r] = list[r + 1] as number;
+    list[r + 1] = t;
+  }
   for (let k = 0; k < n; k++) {
     const t = u[a + k] as number;
     u[a + k] = u[b + k] as number;
@@ -149,27 +195,41 @@ function exchange(stage: Stage, r: number): void {
   h[a + r + 1] = 0;
 }
 
-/** Hermite reduction: |H_ij| ≤ |H_jj|/2 for j < i. False when a multiplier would take the transform past exact doubles. */
+/**
+ * Hermite reduction: |H_ij| ≤ |H_jj|/2 for j < i, as far as rounding lets one see. Multipliers above PATIENCE_LIMIT are made only
+ * next to the diagonal, and none that would take the transform past exact doubles. False when one was left out.
+ */
 function reduce(stage: Stage): boolean {
-  const { n, h, u } = stage;
+  const { n, h, noise, growth } = stage;
+  let complete = true;
   for (let i = 1; i < n; i++) {
+    const diagonal = h[i * n + i] as number;
     for (let j = i - 1; j >= 0; j--) {
       const ratio = (h[i * n + j] as number) / (h[j * n + j] as number);
       if (ratio <= 0.501 && ratio >= -0.501) continue;
-      const t = Math.round(Math.max(-GROWTH_LIMIT, Math.min(GROWTH_LIMIT, ratio)));
-      if (Math.abs(t) * stage.growth > STEP_LIMIT) return false;
-      for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
-      let top = stage.growth;
-      for (let k = 0; k < n; k++) {
-        const value = (u[j * n + k] as number) + t * (u[i * n + k] as number);
-        u[j * n + k] = value;
-        const size = Math.abs(value);
-        if (size > top) top = size;
-      }
-      stage.growth = top;
+      if (!significant(ratio, diagonal, noise[j] as number)) continue;
+      const size = Math.abs(ratio);
+      const room = (EXACT_LIMIT - (growth[j] as number)) / (growth[i] as number);
+      if ((size > PATIENCE_LIMIT && j < i - 1) || size > room) complete = false;
+      else addMultiple(stage, i, j, Math.round(ratio));
     }
   }
-  return true;
+  return complete;
+}
+
+/** H_i −= t·H_j, and on the other side b_j += t·b_i. */
+function addMultiple(stage: Stage, i: number, j: number, t: number): void {
+  const { n, h, u, noise, growth } = stage;
+  for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
+  let top = 0;
+  for (let k = 0; k < n; k++) {
+    const value = (u[j * n + k] as number) + t * (u[i * n + k] as number);
+    u[j * n + k] = value;
+    const size = Math.abs(value);
+    if (size > top) top = size;
+  }
+  growth[j] = top;
+  noise[j] = (noise[j] as number) + Math.abs(t) * (noise[i] as number);
 }
 
 /** log2 of the largest |H_jj|: every vector of the lattice spanned by the rows [bᵢ | yᵢ/ρ] is at least 2^−this long. */

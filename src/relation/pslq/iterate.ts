@@ -18,6 +18,8 @@ export interface Stage {
   readonly u: Float64Array;
   /** Absolute uncertainty of row i of D, from rounding: multipliers that it drowns are not worth making. */
   readonly noise: Float64Array;
+  /** The same of the rows that `u` started from. */
+  readonly source: Float64Array;
   /** Largest |uᵢⱼ| of row i. */
   readonly growth: Float64Array;
 }
@@ -96,7 +98,7 @@ function invertTransposed(rows: Float64Array, n: number, width: number, diagonal
 export function newStage({ h, noise }: Factor, n: number): Stage {
   const u = new Float64Array(n * n);
   for (let i = 0; i < n; i++) u[i * n + i] = 1;
-  return { n, h, u, noise, growth: new Float64Array(n).fill(1) };
+  return { n, h, u, noise, source: noise.slice(), growth: new Float64Array(n).fill(1) };
 }
 
 /**
@@ -126,7 +128,6 @@ export function reduceWide({ h, noise }: Factor, n: number, act: (i: number, j: 
       if (!significant(ratio, h[i * n + i] as number, noise[j] as number)) continue;
       const t = Math.round(ratio);
       for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
-      noise[j] = (noise[j] as number) + Math.abs(t) * (noise[i] as number);
       act(i, j, t);
     }
   }
@@ -219,17 +220,20 @@ function reduce(stage: Stage): boolean {
 
 /** H_i −= t·H_j, and on the other side b_j += t·b_i. */
 function addMultiple(stage: Stage, i: number, j: number, t: number): void {
-  const { n, h, u, noise, growth } = stage;
+  const { n, h, u, noise, source, growth } = stage;
   for (let k = 0; k <= j; k++) h[i * n + k] = (h[i * n + k] as number) - t * (h[j * n + k] as number);
   let top = 0;
+  let level = 0;
   for (let k = 0; k < n; k++) {
     const value = (u[j * n + k] as number) + t * (u[i * n + k] as number);
     u[j * n + k] = value;
     const size = Math.abs(value);
     if (size > top) top = size;
+    const part = size * (source[k] as number);
+    if (part > level) level = part;
   }
   growth[j] = top;
-  noise[j] = (noise[j] as number) + Math.abs(t) * (noise[i] as number);
+  noise[j] = level;
 }
 
 /** log2 of the largest |H_jj|: every vector of the lattice spanned by the rows [bᵢ | yᵢ/ρ] is at least 2^−this long. */

@@ -18,13 +18,23 @@
  */
 import { type Ball, fromInteger, subtract, withBits } from '../../number/ball.ts';
 import { type ComplexBall, divide, isComplex, multiply, toComplex, type Value } from '../../number/complex.ts';
-import { roundShift } from '../../number/integer.ts';
+import { absolute, roundShift } from '../../number/integer.ts';
 import type { EvaluationContext } from '../family.ts';
 import { centralInverses, powersOf, pulse, tailsRadius } from './double-tails.ts';
 import type { Plan } from './plan.ts';
 
-/** Letters by code − 2, to an absolute error of 2^−bits. */
-export type LetterSource = (bits: number) => readonly Value[];
+/** The letters with codes 2, 3, … */
+export interface Letters {
+  /** All of them to an absolute error of 2^−bits. */
+  values(bits: number): readonly Value[];
+  /** Those that are rational, exactly; null for the others. Products with small fractions are much cheaper. */
+  readonly exact: readonly (Rational | null)[];
+}
+
+export interface Rational {
+  readonly p: bigint;
+  readonly q: bigint;
+}
 
 export interface GeneralSize {
   readonly work: number;
@@ -45,12 +55,12 @@ interface LetterShape {
 }
 
 /** The growth log2 A of a plan with these letters; Infinity when a letter lies on or next to the segment [0, 1]. */
-export function log2Growth(plan: Plan, letters: LetterSource): number {
+export function log2Growth(plan: Plan, letters: Letters): number {
   return growthOf(plan, shapesOf(letters)).log2A;
 }
 
-function shapesOf(letters: LetterSource): LetterShape[] {
-  return letters(80).map((letter) => {
+function shapesOf(letters: Letters): LetterShape[] {
+  return letters.values(80).map((letter) => {
     const { re, im } = toComplex(letter);
     return { re: toNumber(re), im: toNumber(im) };
   });
@@ -93,7 +103,7 @@ function growthOf(plan: Plan, shapes: readonly LetterShape[]): { log2A: number; 
 }
 
 /** Throws RangeError when the letters make the method useless (`log2Growth` tells beforehand). */
-export function generalSize(plan: Plan, letters: LetterSource, bits: number): GeneralSize {
+export function generalSize(plan: Plan, letters: Letters, bits: number): GeneralSize {
   const { log2A, log2D, log2Least } = growthOf(plan, shapesOf(letters));
   if (log2A > MAX_LOG2_GROWTH)
     throw new RangeError(`generalSize: expected letters away from [0, 1], got growth 2^${log2A}`);
@@ -120,10 +130,18 @@ interface Factor {
   readonly im: bigint;
 }
 
+/** αβ and, for single letters, 2β: in fixed point, or exactly over a small common denominator. */
+interface CoreFactors {
+  readonly product: Factor;
+  readonly single: Factor | null;
+  /** 0n for fixed point. */
+  readonly denominator: bigint;
+}
+
 /** J₀ of every core in units of 2^−work. */
 export function generalTails(
   plan: Plan,
-  letters: LetterSource,
+  letters: Letters,
   size: GeneralSize,
   context: EvaluationContext,
 ): { re: bigint[]; im: bigint[] } {
@@ -142,10 +160,15 @@ export function generalTails(
     if (n === size.steps || n % 16 === 0) {
       const drop = Math.min(2 * Math.max(0, n - 16), size.work);
       precision = top - drop;
-      current = factors.map(({ product, single }) => ({
-        product: truncated(product, drop),
-        single: single === null ? null : truncated(single, drop),
-      }));
+      current = factors.map((factor) =>
+        factor.denominator !== 0n
+          ? factor
+          : {
+              product: truncated(factor.product, drop),
+              single: factor.single === null ? null : truncated(factor.single, drop),
+              denominator: 0n,
+            },
+      );
     }
     const shift = BigInt(precision);
     const powers = powersOf(n, plan.maxExponent);
@@ -161,13 +184,13 @@ export function generalTails(
     for (let c = 0; c < cores.length; c++) {
       let x = re[c] as bigint;
       let y = im[c] as bigint;
-      const { product, single } = current[c] as { product: Factor; single: Factor | null };
+      const { product, single, denominator } = current[c] as CoreFactors;
       const references = (cores[c] as Plan['cores'][number]).references;
       if (single !== null) {
         const share = shareRe[(references[0] as { quotient: number }).quotient] as bigint;
         x -= share;
-        re[c] = (x * product.re - y * product.im + share * single.re) >> shift;
-        im[c] = (x * product.im + y * product.re + share * single.im) >> shift;
+        re[c] = scaled(x * product.re - y * product.im + share * single.re, shift, denominator);
+        im[c] = scaled(x * product.im + y * product.re + share * single.im, shift, denominator);
         continue;
       }
       for (const { quotient, factor, conjugate } of references) {
@@ -175,12 +198,16 @@ export function generalTails(
         x += f * (shareRe[quotient] as bigint);
         y += (conjugate ? -f : f) * (shareIm[quotient] as bigint);
       }
-      re[c] = (x * product.re - y * product.im) >> shift;
-      im[c] = (x * product.im + y * product.re) >> shift;
+      re[c] = scaled(x * product.re - y * product.im, shift, denominator);
+      im[c] = scaled(x * product.im + y * product.re, shift, denominator);
     }
     pulse(n, size.steps, context);
   }
   return { re, im };
+}
+
+function scaled(x: bigint, shift: bigint, denominator: bigint): bigint {
+  return denominator === 0n ? x >> shift : x / denominator;
 }
 
 function truncated(factor: Factor, drop: number): Factor {
@@ -189,9 +216,9 @@ function truncated(factor: Factor, drop: number): Factor {
 }
 
 /** αβ of every core and 2β of every single letter, with `bits` fraction bits and an error of at most two units in each part. */
-function factorsOf(plan: Plan, letters: LetterSource, bits: number): { product: Factor; single: Factor | null }[] {
+function factorsOf(plan: Plan, letters: Letters, bits: number): CoreFactors[] {
   const one = fromInteger(1n);
-  const table = letters(bits + 24);
+  const table = letters.values(bits + 24);
   const letter = (code: number): Value => (code < 2 ? fromInteger(BigInt(code)) : (table[code - 2] as Value));
   const known = new Map<string, Factor>();
   const fixed = (key: string, make: () => Value): Factor => {
@@ -203,14 +230,34 @@ function factorsOf(plan: Plan, letters: LetterSource, bits: number): { product: 
     return made;
   };
   return plan.cores.map(({ word, first, last }) => {
+    const exact = exactFactors(word, first, last, letters);
+    if (exact !== null) return exact;
     const beta = (): Value => (last === 1 ? one : divide(one, letter(last), bits + 20));
     const product = fixed(`${first},${last}`, () => {
       if (first === 0) return beta();
       return divide(beta(), subtractFromOne(letter(first)), bits + 12);
     });
     const single = word.length === 1 ? fixed(`2/${last}`, () => multiply(fromInteger(2n), beta(), bits + 12)) : null;
-    return { product, single };
+    return { product, single, denominator: 0n };
   });
+}
+
+const SMALL = 1n << 62n;
+
+/** Both factors over one denominator, where the letters are rational and the fractions fit in a machine word. */
+function exactFactors(word: string, first: number, last: number, letters: Letters): CoreFactors | null {
+  const exact = (code: number): Rational | null =>
+    code < 2 ? { p: BigInt(code), q: 1n } : (letters.exact[code - 2] ?? null);
+  const a = exact(first);
+  const b = exact(last);
+  if (a === null || b === null) return null;
+  const alpha = first === 0 ? { p: 1n, q: 1n } : { p: a.q, q: a.q - a.p };
+  const top = alpha.p * b.q;
+  const denominator = alpha.q * b.p;
+  const doubled = 2n * b.q * alpha.q;
+  if (absolute(top) >= SMALL || absolute(denominator) >= SMALL || absolute(doubled) >= SMALL) return null;
+  const single = word.length === 1 ? { re: doubled, im: 0n } : null;
+  return { product: { re: top, im: 0n }, single, denominator };
 }
 
 function subtractFromOne(x: Value): Value {
@@ -224,4 +271,18 @@ function fixedPoint(x: Ball, bits: number): bigint {
   const ball = withBits(x, bits);
   if (ball.rad > 2n) throw new RangeError('fixedPoint: expected letters precise enough for two units');
   return ball.mid;
+}
+
+/** J₀ of the words asked for, for general letters; see general-tails.ts. */
+export function generalAnswers(plan: Plan, letters: Letters, bits: number, context: EvaluationContext): ComplexBall[] {
+  const size = generalSize(plan, letters, bits + 2);
+  const { re, im } = generalTails(plan, letters, size, context);
+  return plan.answers.map(({ core, sign, conjugate }) => {
+    const part = (mid: bigint, flip: boolean): Ball =>
+      withBits({ mid: flip ? -mid : mid, rad: size.radius, bits: size.work }, bits + 2);
+    return {
+      re: part(re[core] as bigint, sign < 0),
+      im: part(im[core] as bigint, sign < 0 !== conjugate),
+    };
+  });
 }

@@ -12,7 +12,8 @@ import {
   realTails,
   tailsSize,
 } from './double-tails.ts';
-import { generalSize, generalTails, type LetterSource } from './general-tails.ts';
+import type { Letters } from './general-tails.ts';
+import { evaluateWordsOnPath } from './path.ts';
 import { type Plan, planWords } from './plan.ts';
 import { rootSymmetry, wordAtRoots } from './words.ts';
 
@@ -38,9 +39,10 @@ function gcdNumber(a: number, b: number): number {
   return b === 0 ? a : gcdNumber(b, a % b);
 }
 
-type Ring = 2 | 4 | 6 | 8 | 12;
+export type Ring = 2 | 4 | 6 | 8 | 12;
 
-function ringOf(order: number): Ring {
+/** The ring that holds the roots of this order. Throws RangeError for other orders than 1, 2, 3, 4, 6, 8, 12. */
+export function ringOf(order: number): Ring {
   if (order <= 2) return 2;
   if (order === 4) return 4;
   if (order === 3 || order === 6) return 6;
@@ -66,7 +68,7 @@ export function evaluateRootSums(sums: readonly RootSum[], bits: number, context
         order,
       );
     });
-    const values = evaluateWords(words, order, bits, context);
+    const values = evaluateRootWords(words, order, bits, context);
     members.forEach((k, j) => {
       results[k] = values[j] as Value;
     });
@@ -74,10 +76,16 @@ export function evaluateRootSums(sums: readonly RootSum[], bits: number, context
   return results;
 }
 
-function evaluateWords(words: readonly string[], order: Ring, bits: number, context: EvaluationContext): Value[] {
+/** Words with the letters e^{2πi·e/order} as code 1 + e; see `evaluateRootSums`. */
+export function evaluateRootWords(
+  words: readonly string[],
+  order: Ring,
+  bits: number,
+  context: EvaluationContext,
+): Value[] {
+  if (order === 8 || order === 12) return evaluateWordsOnPath(words, rootLetters(order), bits, context);
   const plan = planWords(words, rootSymmetry(order));
   if (order === 2) return realAnswers(plan, bits, context);
-  if (order === 8 || order === 12) return generalAnswers(plan, (b) => rootValues(order, b), bits, context);
   return pairAnswers(plan, order === 4 ? gaussian : eisenstein, bits, context);
 }
 
@@ -109,23 +117,12 @@ function pairAnswers(plan: Plan, ring: PairRing, bits: number, context: Evaluati
   });
 }
 
-/** J₀ of the words asked for, for general letters; see general-tails.ts. */
-export function generalAnswers(
-  plan: Plan,
-  letters: LetterSource,
-  bits: number,
-  context: EvaluationContext,
-): ComplexBall[] {
-  const size = generalSize(plan, letters, bits + 2);
-  const { re, im } = generalTails(plan, letters, size, context);
-  return plan.answers.map(({ core, sign, conjugate }) => {
-    const part = (mid: bigint, flip: boolean): Ball =>
-      withBits({ mid: flip ? -mid : mid, rad: size.radius, bits: size.work }, bits + 2);
-    return {
-      re: part(re[core] as bigint, sign < 0),
-      im: part(im[core] as bigint, sign < 0 !== conjugate),
-    };
-  });
+/** The letters e^{2πi·e/order}, e = 1 … order − 1, with the codes 1 + e. */
+function rootLetters(order: 8 | 12): Letters {
+  return {
+    values: (bits) => rootValues(order, bits),
+    exact: Array.from({ length: order - 1 }, (_, k) => (2 * (k + 1) === order ? { p: -1n, q: 1n } : null)),
+  };
 }
 
 /** e^{2πi·e/order} for e = 1 … order − 1, for the orders 8 and 12. */

@@ -35,6 +35,11 @@ const GAMMA_LOG2 = Math.log2(2 / Math.sqrt(3));
 const SHRINK = 0.99;
 /** Transforms stay below this, so that one more reduction step is exact in a double. */
 const GROWTH_LIMIT = 2 ** 40;
+/**
+ * Only every second round reduces below the subdiagonal, which alone decides about exchanges. A longer wait (8 rounds) lets entries
+ * grow until rounding spoils the subdiagonal too: measured, relations were then missed.
+ */
+const FULL_EVERY = 2;
 const EXACT_LIMIT = 2 ** 52;
 /** A multiplier above this waits until no exchange is left: it often vanishes when the rows it acts on have become shorter. */
 const PATIENCE_LIMIT = 2 ** 20;
@@ -107,9 +112,13 @@ export function newStage({ h, noise }: Factor, n: number): Stage {
  */
 export function iterate(stage: Stage, limit: number, count: { rounds: number }): 'done' | 'wide' | 'grown' | 'more' {
   for (let round = 0; round < limit; round++) {
-    const reduced = reduce(stage);
-    const pairs = choosePairs(stage);
-    if (pairs.length === 0) return reduced ? 'done' : 'wide';
+    reduce(stage, round % FULL_EVERY === 0 ? stage.n : 1);
+    let pairs = choosePairs(stage);
+    if (pairs.length === 0) {
+      const reduced = reduce(stage, stage.n);
+      pairs = choosePairs(stage);
+      if (pairs.length === 0) return reduced ? 'done' : 'wide';
+    }
     count.rounds++;
     for (const r of pairs) exchange(stage, r);
     if (stage.growth.some((size) => size > GROWTH_LIMIT)) return 'grown';
@@ -197,15 +206,16 @@ function exchange(stage: Stage, r: number): void {
 }
 
 /**
- * Hermite reduction: |H_ij| ≤ |H_jj|/2 for j < i, as far as rounding lets one see. Multipliers above PATIENCE_LIMIT are made only
+ * Hermite reduction: |H_ij| ≤ |H_jj|/2 for i − band ≤ j < i, as far as rounding lets one see. Multipliers above PATIENCE_LIMIT are made only
  * next to the diagonal, and none that would take the transform past exact doubles. False when one was left out.
  */
-function reduce(stage: Stage): boolean {
+function reduce(stage: Stage, band: number): boolean {
   const { n, h, noise, growth } = stage;
   let complete = true;
   for (let i = 1; i < n; i++) {
     const diagonal = h[i * n + i] as number;
-    for (let j = i - 1; j >= 0; j--) {
+    const last = Math.max(0, i - band);
+    for (let j = i - 1; j >= last; j--) {
       const ratio = (h[i * n + j] as number) / (h[j * n + j] as number);
       if (ratio <= 0.501 && ratio >= -0.501) continue;
       if (!significant(ratio, diagonal, noise[j] as number)) continue;

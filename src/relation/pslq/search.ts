@@ -80,10 +80,10 @@ export function* pslq(
     if (factor === undefined) return { kind: 'exhausted', weights };
     const { h } = factor;
     const stage = newStage(factor, state.n);
-    let status = iterate(stage, 4, count);
+    let status = iterate(stage, 8, count);
     while (status === 'more') {
       yield;
-      status = iterate(stage, 4, count);
+      status = iterate(stage, 8, count);
     }
     yield* apply(state, stage.u);
     if (status === 'wide') widen(state, weights);

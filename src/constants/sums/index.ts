@@ -1,6 +1,7 @@
 /** The families of nested sums and iterated integrals. */
 import type { Family } from '../family.ts';
 import { centralBinomialSums } from './central-binomial.ts';
+import { algebraicPolylogarithms, harmonicPolylogarithms, multiplePolylogarithms } from './hyperlogarithms.ts';
 import { rootPolylogarithms } from './root-polylogarithms.ts';
 import { alternatingSums, multipleZeta } from './zeta-values.ts';
 
@@ -9,5 +10,8 @@ export const sumFamilies: readonly Family<any>[] = [
   multipleZeta,
   alternatingSums,
   rootPolylogarithms,
+  algebraicPolylogarithms,
+  harmonicPolylogarithms,
+  multiplePolylogarithms,
   centralBinomialSums,
 ];

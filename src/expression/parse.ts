@@ -46,10 +46,11 @@ class Parser {
   }
 
   whole(): Term {
-    if (this.peek.kind === 'end') throw new InputError('empty', 'Nothing is typed here yet.', spotIn(this.text, 0, 0));
+    if (this.tokens.length === 1) throw new InputError('empty', 'Nothing is typed here yet.', spotIn(this.text, 0, 0));
     const term = this.sum();
-    if (this.peek.kind === ')') this.fail('unmatched-bracket', 'closes a bracket that was never opened');
-    if (this.peek.kind !== 'end') this.fail('unexpected', 'is not expected here; an operator such as * may be missing');
+    const next: TokenKind = this.peek.kind;
+    if (next === ')') this.fail('unmatched-bracket', 'closes a bracket that was never opened');
+    if (next !== 'end') this.fail('unexpected', 'is not expected here; an operator such as * may be missing');
     return term;
   }
 

@@ -1,9 +1,46 @@
 /** Chooses the kernels: WebAssembly SIMD where it runs, TypeScript elsewhere. */
 import type { Kernels } from './contract.ts';
+import { KERNELS_BASE64 } from './generated/kernels.ts';
 import { typescriptKernels } from './typescript.ts';
 
 export type KernelChoice = 'auto' | 'typescript';
 
-export function newKernels(_choice: KernelChoice): Kernels {
-  return typescriptKernels();
+const PAGE = 65536;
+const SCRATCH_DOUBLES = 8192;
+/** Grow by at least this many pages at a time: 4 MB. */
+const GROWTH = 64;
+
+type Loops = Omit<Kernels, 'kind' | 'allocate' | 'view'> & { useScratch(at: number): void };
+
+/** Undefined until first wanted; null where WebAssembly SIMD is missing. Compiled code only, no state of a search. */
+let compiled: WebAssembly.Module | null | undefined;
+
+/** Kernels with a memory of their own. Works synchronously, in Node and in a worker. */
+export function newKernels(choice: KernelChoice): Kernels {
+  if (choice === 'typescript') return typescriptKernels();
+  if (compiled === undefined) compiled = compile();
+  return compiled === null ? typescriptKernels() : webAssemblyKernels(compiled);
+}
+
+function compile(): WebAssembly.Module | null {
+  if (typeof WebAssembly === 'undefined') return null;
+  const bytes = Uint8Array.from(atob(KERNELS_BASE64), (character) => character.charCodeAt(0));
+  // `validate` is false where the engine knows no SIMD.
+  return WebAssembly.validate(bytes) ? new WebAssembly.Module(bytes) : null;
+}
+
+function webAssemblyKernels(module: WebAssembly.Module): Kernels {
+  const memory = new WebAssembly.Memory({ initial: 4 });
+  const loops = new WebAssembly.Instance(module, { env: { memory } }).exports as unknown as Loops;
+  // The first doubles stay free: index 0 is never handed out.
+  let used = 128;
+  const allocate = (length: number): number => {
+    const at = used;
+    used += length + (length & 1);
+    const missing = Math.ceil((used * 8) / PAGE) - memory.buffer.byteLength / PAGE;
+    if (missing > 0) memory.grow(Math.max(missing, GROWTH));
+    return at;
+  };
+  loops.useScratch(allocate(SCRATCH_DOUBLES));
+  return { ...loops, kind: 'webassembly', allocate, view: () => new Float64Array(memory.buffer) };
 }

@@ -1,5 +1,7 @@
 /** The families of nested sums and iterated integrals. */
 import type { Family } from '../family.ts';
+import { besselMoments } from '../integrals/bessel-moments.ts';
+import { logSineIntegrals } from '../integrals/log-sine.ts';
 import { centralBinomialSums } from './central-binomial.ts';
 import { algebraicPolylogarithms, harmonicPolylogarithms, multiplePolylogarithms } from './hyperlogarithms.ts';
 import { rootPolylogarithms } from './root-polylogarithms.ts';
@@ -14,4 +16,6 @@ export const sumFamilies: readonly Family<any>[] = [
   harmonicPolylogarithms,
   multiplePolylogarithms,
   centralBinomialSums,
+  logSineIntegrals,
+  besselMoments,
 ];

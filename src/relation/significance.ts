@@ -76,3 +76,9 @@ export function primitive(coefficients: readonly bigint[]): bigint[] {
   const divisor = first < 0n ? -content : content;
   return coefficients.map((c) => c / divisor);
 }
+
+/** About how many digits a search of n numbers in m columns needs to rule out every norm up to 10^maxNormLog10. */
+export function digitsNeeded(n: number, m: number, maxNormLog10: number): number {
+  // Lattice reduction leaves its shortest vector within about 1.02^n of the root of the determinant (Gama and Nguyen 2008).
+  return Math.ceil((n * (maxNormLog10 + n * Math.log10(1.02) + 0.3)) / m) + 1;
+}

@@ -1,16 +1,21 @@
 import { describe, expect, it } from 'vitest';
 import { type Ball, fromInteger, timesPowerOfTwo } from '../../src/number/ball.ts';
 import { InputError } from '../../src/number/errors.ts';
+import type { Method, RelationOutcome } from '../../src/relation/contract.ts';
 import { mayVanish, prepare } from '../../src/relation/prepare.ts';
 import { startRelation } from '../../src/relation/relation.ts';
 import { primitive } from '../../src/relation/significance.ts';
 import { randomFrom } from '../support/random.ts';
 import { planted, randomNumbers, run } from './planted.ts';
 
-function pslq(numbers: readonly Ball[], maxNormLog10?: number) {
-  const rows = numbers.map((x) => [x]);
-  return run({ rows, method: 'pslq', ...(maxNormLog10 === undefined ? {} : { maxNormLog10 }) });
+type Search = (numbers: readonly Ball[], maxNormLog10?: number) => RelationOutcome;
+
+function searchBy(method: Method): Search {
+  return (numbers, maxNormLog10) =>
+    run({ rows: numbers.map((x) => [x]), method, ...(maxNormLog10 === undefined ? {} : { maxNormLog10 }) });
 }
+
+const METHODS = ['pslq', 'lattice'] as const;
 
 function refusal(rows: readonly (readonly Ball[])[]): string {
   try {
@@ -65,11 +70,12 @@ describe('input that cannot be searched is refused with a reason', () => {
   });
 });
 
-describe('relations that need no search', () => {
+describe.each(METHODS)('relations that need no search (%s)', (method) => {
+  const search = searchBy(method);
   it('an exact zero, and a zero within its uncertainty', () => {
-    expect(pslq([exact(3n), exact(0n), exact(5n)])).toMatchObject({ kind: 'relation', coefficients: [0n, 1n, 0n] });
+    expect(search([exact(3n), exact(0n), exact(5n)])).toMatchObject({ kind: 'relation', coefficients: [0n, 1n, 0n] });
     const numbers = randomNumbers(randomFrom('zero'), 3, 100);
-    expect(pslq([...numbers, { mid: 1n, rad: 2n, bits: 100 }])).toMatchObject({
+    expect(search([...numbers, { mid: 1n, rad: 2n, bits: 100 }])).toMatchObject({
       kind: 'relation',
       coefficients: [0n, 0n, 0n, 1n],
     });
@@ -78,9 +84,9 @@ describe('relations that need no search', () => {
   it('equal numbers, and equal up to sign, named by position', () => {
     const [x, y, z] = randomNumbers(randomFrom('equal'), 3, 100) as [Ball, Ball, Ball];
     const nudged = { ...y, mid: -y.mid + 2n };
-    expect(pslq([x, y, z, x])).toMatchObject({ kind: 'relation', coefficients: [1n, 0n, 0n, -1n] });
+    expect(search([x, y, z, x])).toMatchObject({ kind: 'relation', coefficients: [1n, 0n, 0n, -1n] });
     expect(prepare([x, y, z, nudged].map((b) => [b])).immediate).toMatchObject({ kind: 'equal', indices: [1, 3] });
-    expect(pslq([x, y, z, nudged])).toMatchObject({ coefficients: [0n, 1n, 0n, 1n] });
+    expect(search([x, y, z, nudged])).toMatchObject({ coefficients: [0n, 1n, 0n, 1n] });
   });
 
   it('not on the strength of a few digits', () => {
@@ -89,15 +95,16 @@ describe('relations that need no search', () => {
       { mid: (5n << 8n) + 1n, rad: 2n, bits: 8 },
     ];
     expect(prepare(few.map((b) => [b])).immediate).toBeUndefined();
-    expect(pslq(few).kind).not.toBe('relation');
+    expect(search(few).kind).not.toBe('relation');
   });
 });
 
-describe('absolute size and gaps of size do not matter', () => {
+describe.each(METHODS)('absolute size and gaps of size do not matter (%s)', (method) => {
+  const search = searchBy(method);
   it('tiny and huge numbers', () => {
     const { numbers, relation } = planted(randomFrom('size'), 6, 5, 300);
     for (const shift of [-3000, -1, 200, 4000]) {
-      expect(pslq(numbers.map((x) => timesPowerOfTwo(x, shift)))).toMatchObject({
+      expect(search(numbers.map((x) => timesPowerOfTwo(x, shift)))).toMatchObject({
         kind: 'relation',
         coefficients: primitive(relation),
       });
@@ -114,7 +121,7 @@ describe('absolute size and gaps of size do not matter', () => {
     const sum = numbers.reduce((s, x, i) => s + x.mid * (relation[i] as bigint), 0n);
     numbers.push({ mid: -sum / 7n, rad: 1n, bits });
     const cut = numbers.map((x) => ({ mid: x.mid >> 400n, rad: 1n, bits: bits - 400 }));
-    expect(pslq(cut)).toMatchObject({ kind: 'relation', coefficients: relation });
+    expect(search(cut)).toMatchObject({ kind: 'relation', coefficients: relation });
   });
 
   it('ratios of 10^60 without a relation end with a bound', () => {
@@ -123,15 +130,16 @@ describe('absolute size and gaps of size do not matter', () => {
       rad: 1n,
       bits: 600,
     }));
-    const outcome = pslq(numbers);
+    const outcome = search(numbers);
     expect(outcome.kind).toBe('excluded');
     expect(outcome.normBoundLog10).toBeGreaterThan(20);
   });
 });
 
-describe('digits that do not suffice', () => {
+describe.each(METHODS)('digits that do not suffice (%s)', (method) => {
+  const search = searchBy(method);
   it('a limit that the digits cannot reach is inconclusive and says how many are needed', () => {
-    const outcome = pslq(randomNumbers(randomFrom('limit'), 6, 300), 30);
+    const outcome = search(randomNumbers(randomFrom('limit'), 6, 300), 30);
     expect(outcome.kind).toBe('inconclusive');
     if (outcome.kind === 'inconclusive')
       expect(outcome.reason).toMatch(/90 right digits .* about 18\d would be needed/);
@@ -139,7 +147,7 @@ describe('digits that do not suffice', () => {
   });
 
   it('a limit within reach ends early, with at least that bound', () => {
-    const outcome = pslq(randomNumbers(randomFrom('limit'), 6, 300), 5);
+    const outcome = search(randomNumbers(randomFrom('limit'), 6, 300), 5);
     expect(outcome.kind).toBe('excluded');
     expect(outcome.normBoundLog10).toBeGreaterThanOrEqual(5);
   });
@@ -147,25 +155,25 @@ describe('digits that do not suffice', () => {
   it('one inaccurate number among accurate ones sets the precision', () => {
     const numbers = randomNumbers(randomFrom('one poor'), 5, 1000);
     numbers[2] = { mid: (numbers[2] as Ball).mid >> 900n, rad: 1n, bits: 100 };
-    const outcome = pslq(numbers);
+    const outcome = search(numbers);
     expect(outcome.kind).toBe('excluded');
     expect(outcome.normBoundLog10).toBeLessThan(7);
   });
 
   it('numbers equal to many digits but not to all are not called equal', () => {
     const [x, z] = randomNumbers(randomFrom('near'), 2, 400) as [Ball, Ball];
-    const outcome = pslq([x, { ...x, mid: x.mid + (1n << 200n) }, { mid: z.mid >> 300n, rad: 1n, bits: 100 }]);
+    const outcome = search([x, { ...x, mid: x.mid + (1n << 200n) }, { mid: z.mid >> 300n, rad: 1n, bits: 100 }]);
     expect(outcome.kind).toBe('inconclusive');
   });
 });
 
-describe('exact and dependent numbers', () => {
+describe.each(METHODS)('exact and dependent numbers (%s)', (method) => {
   it('exact integers always have a relation, and it is exact', () => {
     const random = randomFrom('integers');
     for (const size of [5, 60, 2000]) {
       for (const n of [2, 3, 7]) {
         const rows = Array.from({ length: n }, () => [exact(random.bits(size) + 2n)]);
-        const outcome = run({ rows, method: 'pslq' });
+        const outcome = run({ rows, method });
         expect(outcome.kind).toBe('relation');
         if (outcome.kind === 'relation') expect(mayVanish(rows, outcome.coefficients)).toBe(true);
       }
@@ -176,7 +184,7 @@ describe('exact and dependent numbers', () => {
     const [x, y, z] = randomNumbers(randomFrom('several'), 3, 400) as [Ball, Ball, Ball];
     const of = (mid: bigint): Ball => ({ mid, rad: 12n, bits: 400 });
     const rows = [x, y, of(3n * x.mid + 5n * y.mid), z, of(7n * z.mid - 2n * x.mid)].map((b) => [b]);
-    const outcome = run({ rows, method: 'pslq' });
+    const outcome = run({ rows, method });
     expect(outcome.kind).toBe('relation');
     if (outcome.kind === 'relation') {
       expect(mayVanish(rows, outcome.coefficients)).toBe(true);
@@ -185,23 +193,23 @@ describe('exact and dependent numbers', () => {
   });
 });
 
-describe('the run', () => {
+describe.each(METHODS)('the run (%s)', (method) => {
   it('is made of short steps, reports progress that only rises, and keeps its outcome', () => {
     const { numbers } = planted(randomFrom('steps'), 30, 6, 800);
-    const search = startRelation({ rows: numbers.map((x) => [x]), method: 'pslq' });
-    let outcome = search.step();
+    const started = startRelation({ rows: numbers.map((x) => [x]), method });
+    let outcome = started.step();
     let fraction = 0;
     while (outcome === undefined) {
-      expect(search.progress.fraction).toBeGreaterThanOrEqual(fraction);
-      fraction = search.progress.fraction;
-      outcome = search.step();
+      expect(started.progress.fraction).toBeGreaterThanOrEqual(fraction);
+      fraction = started.progress.fraction;
+      outcome = started.step();
     }
-    expect(search.step()).toBe(outcome);
+    expect(started.step()).toBe(outcome);
     expect(outcome.kind).toBe('relation');
   });
 
   it('gives the same outcome twice', () => {
     const rows = randomNumbers(randomFrom('twice'), 12, 500).map((x) => [x]);
-    expect(run({ rows, method: 'pslq' })).toEqual(run({ rows, method: 'pslq' }));
+    expect(run({ rows, method })).toEqual(run({ rows, method }));
   });
 });

@@ -1,4 +1,5 @@
 /** The lattice method: integer relations by lattice reduction in doubles on exact residuals, precision fed in gradually. */
+import { bitLength } from '../../number/integer.ts';
 import { type KernelChoice, newKernels } from './kernels/load.ts';
 import { LatticeSearch, type SearchEnd } from './run.ts';
 
@@ -7,7 +8,7 @@ export interface LatticeInput {
   readonly integers: readonly (readonly bigint[])[];
   /** Bounds for |integer − true value|, in units; 1 each by default. */
   readonly errors?: readonly (readonly bigint[])[];
-  /** The last bits that are fed weigh 2^endBits units; 0 by default. Bits below the errors carry no information. */
+  /** The feed ends at weight 2^−endBits; by default at half the inverse of ‖errors‖, past which the bits carry no information. */
   readonly endBits?: number;
   /** Stop when every relation with norm up to 10^this is ruled out on the evidence of doubles. */
   readonly maxNormLog10?: number;
@@ -61,12 +62,13 @@ export function startLattice(input: LatticeInput): LatticeRun {
   if (integers.length < 1 || m < 1 || integers.some((row) => row.length !== m)) {
     throw new RangeError('startLattice: expected at least one row, all of the same positive length');
   }
+  const errors = input.errors ?? integers.map((row) => row.map(() => 1n));
   const kernels = newKernels(input.kernels ?? 'auto');
   const search = new LatticeSearch(
     {
       integers,
-      errors: input.errors ?? integers.map((row) => row.map(() => 1n)),
-      endBits: Math.max(0, Math.floor(input.endBits ?? 0)),
+      errors,
+      endBits: Math.max(0, Math.floor(input.endBits ?? defaultEnd(errors))),
       maxNormLog2: (input.maxNormLog10 ?? Number.POSITIVE_INFINITY) / Math.log10(2),
       accept: input.accept ?? (() => true),
     },
@@ -92,8 +94,16 @@ export function startLattice(input: LatticeInput): LatticeRun {
   };
 }
 
+function defaultEnd(errors: readonly (readonly bigint[])[]): number {
+  let bits = 0;
+  for (let j = 0; j < (errors[0]?.length ?? 0); j++) {
+    const square = errors.reduce((sum, row) => sum + (row[j] as bigint) ** 2n, 0n);
+    bits = Math.max(bits, Math.ceil(bitLength(square) / 2) + 1);
+  }
+  return bits;
+}
+
 function resultOf(search: LatticeSearch, end: SearchEnd): LatticeResult {
-  const { floatNormBoundLog2, iterations } = search.progress;
   return {
     kind: end.kind,
     candidate: end.candidate ?? null,
@@ -101,8 +111,8 @@ function resultOf(search: LatticeSearch, end: SearchEnd): LatticeResult {
     secondResidualLog2: end.secondResidualLog2,
     weightBits: end.e,
     fedBits: search.startBits - end.e,
-    floatNormBoundLog10: floatNormBoundLog2 * Math.log10(2),
-    iterations,
+    floatNormBoundLog10: Math.max(0, end.floatNormBoundLog2 * Math.log10(2)),
+    iterations: search.progress.iterations,
     basis: () => search.exactBasis().map((row) => row.b),
   };
 }

@@ -10,7 +10,7 @@ const SCRATCH_DOUBLES = 8192;
 /** Grow by at least this many pages at a time: 4 MB. */
 const GROWTH = 64;
 
-type Loops = Omit<Kernels, 'kind' | 'allocate' | 'view'> & { useScratch(at: number): void };
+type Loops = Omit<Kernels, 'kind' | 'allocate' | 'view'> & { setScratch(at: number): void };
 
 /** Undefined until first wanted; null where WebAssembly SIMD is missing. Compiled code only, no state of a search. */
 let compiled: WebAssembly.Module | null | undefined;
@@ -41,6 +41,15 @@ function webAssemblyKernels(module: WebAssembly.Module): Kernels {
     if (missing > 0) memory.grow(Math.max(missing, GROWTH));
     return at;
   };
-  loops.useScratch(allocate(SCRATCH_DOUBLES));
-  return { ...loops, kind: 'webassembly', allocate, view: () => new Float64Array(memory.buffer) };
+  loops.setScratch(allocate(SCRATCH_DOUBLES));
+  let view = new Float64Array(memory.buffer);
+  return {
+    ...loops,
+    kind: 'webassembly',
+    allocate,
+    view() {
+      if (view.length === 0) view = new Float64Array(memory.buffer); // growing detached it
+      return view;
+    },
+  };
 }

@@ -12,7 +12,7 @@ const MAX_SWAPS_PER_ROW: i32 = 400;
 let scratch: usize = 0;
 
 /** Where the kernels may keep 8,192 doubles of their own. */
-export function useScratch(at: i32): void {
+export function setScratch(at: i32): void {
   scratch = bytes(at);
 }
 

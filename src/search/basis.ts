@@ -1,10 +1,11 @@
 /** From what a user names as a basis to checked terms. */
 import { weightOf } from '../constants/evaluate.ts';
 import { familyOf } from '../constants/registry.ts';
+import { isOperation, operand } from '../constants/structure.ts';
 import type { Term } from '../constants/term.ts';
+import { termText } from '../constants/term-text.ts';
 import { parseWithSpans, type Spans } from '../expression/parse.ts';
 import { toLatex } from '../expression/print-latex.ts';
-import { toText } from '../expression/print-text.ts';
 import { InputError, spotIn } from '../number/errors.ts';
 import { spaceOf } from '../spaces/registry.ts';
 import type { BasisSpec, PastedConstant, SpaceSpec } from './request.ts';
@@ -67,7 +68,7 @@ function spaceTexts(spec: SpaceSpec): readonly string[] {
 function typed(text: string): BasisElement {
   const term = readTyped(text);
   return {
-    text: toText(term),
+    text: termText(term),
     latex: toLatex(term),
     weight: weightOf(term),
     family: familyTitle(term),
@@ -99,9 +100,10 @@ function checkNames(term: Term, text: string, spans: Spans): void {
     default: {
       const span = spans.get(term);
       try {
-        familyOf(term);
+        if (!isOperation(term)) familyOf(term);
+        else if (term.kind === 'call') checkNames(operand(term), text, spans);
       } catch (error) {
-        if (!(error instanceof InputError) || span === undefined) throw error;
+        if (!(error instanceof InputError) || span === undefined || error.at !== undefined) throw error;
         const spot = spotIn(text, span.offset, span.length);
         throw new InputError(error.code, `${error.message.replace(/\.$/, '')} (column ${spot.column}).`, spot);
       }
@@ -110,7 +112,8 @@ function checkNames(term: Term, text: string, spans: Spans): void {
 }
 
 function familyTitle(term: Term): string {
-  if (term.kind === 'symbol' || term.kind === 'call') return familyOf(term).family.title;
+  if (term.kind === 'symbol' || term.kind === 'call')
+    return isOperation(term) ? 'Algebraic' : familyOf(term).family.title;
   if (term.kind === 'rational') return 'Rational';
   if (term.kind === 'power' && term.base.kind === 'rational') return 'Algebraic';
   return term.kind === 'sum' ? 'Sum' : 'Product';

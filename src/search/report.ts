@@ -1,7 +1,8 @@
 /** The parts of a record that follow from a relation. */
+
+import { termText } from '../constants/term-text.ts';
 import { combination } from '../expression/combination.ts';
 import { toLatex } from '../expression/print-latex.ts';
-import { toText } from '../expression/print-text.ts';
 import { gcd } from '../number/integer.ts';
 import type { Method } from '../relation/contract.ts';
 import { type BasisElement, readTyped } from './basis.ts';
@@ -63,7 +64,7 @@ function withFactor(
 ): { text: string; latex: string } {
   if (divideBy === undefined) return sum;
   const factor = readTyped(divideBy);
-  const text = toText(factor);
+  const text = termText(factor);
   const latex = toLatex(factor);
   const bracket = factor.kind === 'sum';
   return {

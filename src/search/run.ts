@@ -303,7 +303,11 @@ function dependent(
 ): SearchRecord {
   const { elements, columns } = problem;
   const bits = 2 * Math.ceil(problem.value.written * LOG2_10) + GUARD_BITS;
-  const values = inColumns(basisValues(elements, bits, { cache: options.cache, signal: options.signal }), elements, columns);
+  const values = inColumns(
+    basisValues(elements, bits, { cache: options.cache, signal: options.signal }),
+    elements,
+    columns,
+  );
   const vanishes = Array.from({ length: columns }, (_, j) =>
     values.reduce((sum, row, k) => add(sum, timesInteger(row[j] as Ball, integers[k + 1] as bigint)), fromInteger(0n)),
   ).every(containsZero);

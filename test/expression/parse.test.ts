@@ -2,8 +2,8 @@ import { readFileSync } from 'node:fs';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Term } from '../../src/constants/term.ts';
+import { termText } from '../../src/constants/term-text.ts';
 import { makePower, makeProduct, makeSum, parseTerm } from '../../src/expression/parse.ts';
-import { toText } from '../../src/expression/print-text.ts';
 import { InputError } from '../../src/number/errors.ts';
 
 const leaf: fc.Arbitrary<Term> = fc.oneof(
@@ -50,7 +50,7 @@ describe('typed expressions', () => {
   it('print and parse back to the same term', () => {
     fc.assert(
       fc.property(anyTerm, (term) => {
-        expect(parseTerm(toText(term))).toEqual(term);
+        expect(parseTerm(termText(term))).toEqual(term);
       }),
       { numRuns: 3000, seed: 20261201 },
     );
@@ -61,7 +61,7 @@ describe('typed expressions', () => {
       constants: { id: string }[];
     };
     for (const { id } of constants.filter((c) => !c.id.startsWith('sum '))) {
-      expect(parseTerm(toText(parseTerm(id))), id).toEqual(parseTerm(id));
+      expect(parseTerm(termText(parseTerm(id))), id).toEqual(parseTerm(id));
     }
   });
 
@@ -77,7 +77,7 @@ describe('typed expressions', () => {
     ['MPL(2,1;r6,1)', 'MPL(2,1;r6,1)'],
     ['pi^2*log(2)/2', 'pi^2*log(2)/2'],
   ])('%s means %s', (typed, canonical) => {
-    expect(toText(parseTerm(typed))).toBe(canonical);
+    expect(termText(parseTerm(typed))).toBe(canonical);
   });
 
   it.each([

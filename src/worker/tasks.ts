@@ -1,0 +1,79 @@
+/** What each task does; importable without a worker. */
+import { type ConstantCache, evaluateTerm, weightOf } from '../constants/evaluate.ts';
+import { toLatex } from '../expression/print-latex.ts';
+import { type Ball, magnitude } from '../number/ball.ts';
+import { isComplex, type Value } from '../number/complex.ts';
+import { formatBall } from '../number/decimal.ts';
+import { InputError, PrecisionError } from '../number/errors.ts';
+import { readTyped, resolveBasis } from '../search/basis.ts';
+import { checkRecord } from '../search/check.ts';
+import { runSearch } from '../search/run.ts';
+import type { EngineTasks, TaskName } from './messages.ts';
+
+export interface TaskContext<K extends TaskName> {
+  readonly signal: AbortSignal;
+  readonly onProgress: (progress: EngineTasks[K]['progress']) => void;
+  readonly cache: ConstantCache;
+}
+
+type Tasks = {
+  readonly [K in TaskName]: (
+    request: EngineTasks[K]['request'],
+    context: TaskContext<K>,
+  ) => Promise<EngineTasks[K]['response']>;
+};
+
+const MOST_DIGITS = 100_000;
+const LOG2_10 = Math.log2(10);
+
+/** Digits of a typed constant, correctly rounded to `digits` significant digits; the precision is raised until they are certain. */
+export function evaluateToDigits(
+  text: string,
+  digits: number,
+  context: {
+    readonly signal?: AbortSignal;
+    readonly cache?: ConstantCache;
+    readonly onProgress?: (fraction: number) => void;
+  } = {},
+): EngineTasks['evaluate']['response'] {
+  if (!Number.isInteger(digits) || digits < 1 || digits > MOST_DIGITS) {
+    throw new InputError('bad-digits', `The number of digits must be a whole number from 1 to ${MOST_DIGITS}.`);
+  }
+  const term = readTyped(text);
+  let bits = Math.ceil(digits * LOG2_10) + 32;
+  for (let round = 0; ; round++) {
+    const value = evaluateTerm(term, bits, context);
+    try {
+      const parts = partsOf(value, digits);
+      return { ...parts, latex: toLatex(term), weight: weightOf(term) };
+    } catch (error) {
+      if (!(error instanceof PrecisionError)) throw error;
+      if (round >= 6)
+        throw new InputError(
+          'undecided',
+          `${text} cannot be told from zero or from a rounding boundary at ${Math.floor(bits / LOG2_10)} digits; it may be exactly that.`,
+        );
+      const small = Math.max(0, -Math.min(...(isComplex(value) ? [value.re, value.im] : [value]).map(sizeBits)));
+      bits += 64 * 2 ** round + Math.min(small, bits);
+    }
+  }
+}
+
+function sizeBits(x: Ball): number {
+  return Math.max(-1e6, magnitude(x));
+}
+
+function partsOf(value: Value, digits: number): { digits: string; imaginary: string | null } {
+  if (!isComplex(value)) return { digits: formatBall(value, digits), imaginary: null };
+  return { digits: formatBall(value.re, digits), imaginary: formatBall(value.im, digits) };
+}
+
+export const tasks: Tasks = {
+  search: (request, { signal, onProgress, cache }) => runSearch(request, { signal, onProgress, cache }),
+  evaluate: async ({ text, digits }, { signal, onProgress, cache }) =>
+    evaluateToDigits(text, digits, { signal, cache, onProgress: (fraction) => onProgress({ fraction }) }),
+  basis: async ({ basis }) => ({
+    elements: resolveBasis(basis).map(({ text, latex, weight, family }) => ({ text, latex, weight, family })),
+  }),
+  check: ({ record }, { signal, onProgress, cache }) => checkRecord(record, { signal, onProgress, cache }),
+};

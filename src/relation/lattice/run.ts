@@ -253,6 +253,7 @@ export class LatticeSearch {
       this.shape = profile(state);
       return true;
     }
+    if (!periodic) this.range = Math.max(LEAST_RANGE, this.range - 1);
     return yield* this.settle();
   }
 

@@ -1,0 +1,315 @@
+/**
+ * ζ(n), β(n), Catalan's constant and L-values of real characters.
+ *
+ * Radii. Where the parity of s is that of the character: an exact rational times a power of π (ball arithmetic). Catalan and
+ * ζ(3): binary splitting of series whose terms fall by factors of at least 182 and 1000, so that what is left out is less than
+ * 1.01 times the first term left out, made less than one unit of 2^−work; the quotient is floored: 2 units. Everything else: the
+ * alternating sums of alternating.ts (2 units each), with exact integer combinations.
+ */
+import { type Ball, divide, fromInteger, multiply, power, sqrt, subtract, timesInteger } from '../number/ball.ts';
+import { log, sinCos } from '../number/elementary.ts';
+import { InputError } from '../number/errors.ts';
+import { piBall } from '../number/reduction.ts';
+import { splitSeries } from '../number/splitting.ts';
+import { toAccuracy } from './accurate.ts';
+import { ALTERNATING_ERROR, alternatingSums } from './alternating.ts';
+import {
+  addFractions,
+  bernoulliNumbers,
+  bernoulliPolynomial,
+  type Fraction,
+  factorial,
+  fraction,
+  isFundamentalDiscriminant,
+  kronecker,
+  polynomialAt,
+} from './exact.ts';
+import type { EvaluationContext, Family } from './family.ts';
+import { singleConstant } from './single.ts';
+import type { Term } from './term.ts';
+
+/** Arguments above this are closer to 1 than any precision used here can tell apart in reasonable time. */
+const LARGEST_ARGUMENT = 100_000;
+/** Up to here values of matching parity come from Bernoulli numbers. */
+const LARGEST_CLOSED = 120;
+const LARGEST_CONDUCTOR = 2000;
+
+/** Integer argument of a call with `count` arguments in one group, by position. Throws InputError. */
+function integerArguments(
+  name: string,
+  example: string,
+  term: Parameters<Family['parse']>[0],
+  count: number,
+): number[] {
+  const list: readonly Term[] = term.kind === 'call' && term.groups.length === 1 ? (term.groups[0] ?? []) : [];
+  if (list.length !== count) {
+    throw new InputError(
+      'wrong-arguments',
+      `${name} takes ${count === 1 ? 'one integer' : `${count} integers`}, as in ${example}.`,
+    );
+  }
+  return list.map((t) => {
+    if (t.kind !== 'rational' || t.q !== 1n) {
+      throw new InputError('bad-argument', `${name} is known here at integers only, as in ${example}.`);
+    }
+    if (t.p > BigInt(LARGEST_ARGUMENT) || t.p < -BigInt(LARGEST_ARGUMENT)) {
+      throw new InputError('too-large', `The arguments of ${name} may be at most ${LARGEST_ARGUMENT}.`);
+    }
+    return Number(t.p);
+  });
+}
+
+/** coefficient · π^s · √d/√1 with `work` bits about. */
+function piPower(coefficient: Fraction, s: number, radicand: number, work: number): Ball {
+  const size = Math.ceil(s * 1.66) + 8;
+  const pi = power(piBall(work + size + 8), s, work + 8);
+  const scaled = divide(timesInteger(pi, coefficient.p), fromInteger(coefficient.q), work + 8);
+  return radicand === 1 ? scaled : multiply(scaled, sqrt(fromInteger(BigInt(radicand)), work + size), work);
+}
+
+/** ζ(2m)/π^{2m} = (−1)^{m+1} 2^{2m−1} B_{2m}/(2m)!. */
+function evenZetaCoefficient(s: number): Fraction {
+  const b = bernoulliNumbers(s)[s] as Fraction;
+  const sign = (s / 2) % 2 === 1 ? 1n : -1n;
+  return fraction(sign * b.p * (1n << BigInt(s - 1)), b.q * factorial(s));
+}
+
+/** ζ(3) = (1/64) Σ (−1)^k k!¹⁰ (205k² + 250k + 77)/(2k+1)!⁵: Amdeberhan and Zeilberger, Electron. J. Combin. 4(2) (1997) R3. */
+function apery(work: number): Ball {
+  const count = Math.ceil((work + 16) / 10) + 2;
+  const { Q, T } = splitSeries(
+    {
+      p: (k) => -(BigInt(k) ** 5n),
+      q: (k) => 32n * BigInt(2 * k + 1) ** 5n,
+      a: (k) => BigInt(205 * k * k + 250 * k + 77),
+    },
+    1,
+    count,
+  );
+  return { mid: ((77n * Q + T) << BigInt(work)) / (64n * Q), rad: 2n, bits: work };
+}
+
+/** ζ(s) from η(s) = (1 − 2^{1−s}) ζ(s) = Σ (−1)^k/(k+1)^s; several s share one pass. */
+function oddZetas(list: readonly number[], work: number, context: EvaluationContext): Ball[] {
+  const sums = alternatingSums(1, [1], list, work, context);
+  return list.map((s, j) => {
+    const top = 1n << BigInt(s - 1);
+    const scale = { mid: (sums[j]?.[0] as bigint) * top, rad: ALTERNATING_ERROR * top, bits: work };
+    return divide(scale, fromInteger(top - 1n), work);
+  });
+}
+
+/** ζ(s) = Σ_{k≤K} k^−s + less than K^{1−s}/(s−1), when K is small. Each division loses less than one unit. */
+function directZeta(s: number, terms: number, work: number): Ball {
+  const one = 1n << BigInt(work);
+  let mid = one;
+  for (let k = 2; k <= terms; k++) mid += one / BigInt(k) ** BigInt(s);
+  return { mid, rad: BigInt(terms + 1), bits: work };
+}
+
+function zetaTerms(s: number, work: number): number {
+  return Math.ceil(2 ** ((work + 1) / (s - 1)));
+}
+
+/** Whether fewer terms of the defining sum are needed than of the accelerated one. */
+function isDirect(s: number, work: number): boolean {
+  return (work + 1) / (s - 1) < 12 && zetaTerms(s, work) < work / 4;
+}
+
+function evaluateZeta(s: number, bits: number, context: EvaluationContext): Ball {
+  return toAccuracy(bits, 12, (work) => {
+    if (isDirect(s, work)) return directZeta(s, zetaTerms(s, work), work);
+    if (s % 2 === 0 && s <= LARGEST_CLOSED) return piPower(evenZetaCoefficient(s), s, 1, work);
+    if (s === 3) return apery(work);
+    return oddZetas([s], work, context)[0] as Ball;
+  });
+}
+
+interface ZetaArgs {
+  readonly s: number;
+}
+
+export const zetaFamily: Family<ZetaArgs> = {
+  key: 'zeta',
+  title: 'Zeta values',
+  names: ['zeta'],
+  parse: (term) => {
+    if (term.kind === 'call' && (term.groups[0]?.length ?? 0) > 1) return null;
+    const [s = 0] = integerArguments('zeta', 'zeta(3)', term, 1);
+    if (s < 0) return null;
+    if (s < 2) {
+      throw new InputError(
+        s === 1 ? 'divergent' : 'bad-argument',
+        s === 1 ? 'zeta(1) diverges.' : 'zeta takes indices from 2 on, as in zeta(3).',
+      );
+    }
+    return { s };
+  },
+  weight: ({ s }) => s,
+  latex: ({ s }) => `\\zeta(${s})`,
+  text: ({ s }) => `zeta(${s})`,
+  isReal: () => true,
+  evaluate: ({ s }, bits, context) => evaluateZeta(s, bits, context),
+  evaluateMany: (all, bits, context) => {
+    const shared = [...new Set(all.map(({ s }) => s))].filter((s) => s % 2 === 1 && s > 3 && !isDirect(s, bits + 16));
+    const values = shared.length > 1 ? oddZetas(shared, bits + 16, context) : [];
+    const known = new Map(shared.map((s, j) => [s, values[j]]));
+    return all.map(({ s }) => {
+      const value = known.get(s);
+      return value === undefined ? evaluateZeta(s, bits, context) : toAccuracy(bits, 16, () => value);
+    });
+  },
+  definition: '\\zeta(s)=\\sum_{n\\ge1}\\frac1{n^s}',
+  source:
+    'Even s: Euler. ζ(3): Amdeberhan and Zeilberger (1997). Odd s: Cohen, Rodriguez Villegas and Zagier, Exper. Math. 9 (2000) 3.',
+  examples: ['zeta(2)', 'zeta(3)', 'zeta(4)', 'zeta(5)', 'zeta(7)', 'zeta(9)', 'zeta(11)'],
+};
+
+/** G = (1/64) Σ_{k≥1} 256^k (580k² − 184k + 15)/(k³(2k−1) C(6k,3k) C(6k,4k) C(4k,2k)): Pilehrood and Pilehrood, Discrete Math. Theor. Comput. Sci. 12 (2010) 223. */
+function catalan(work: number): Ball {
+  const count = Math.ceil((work + 16 + 2 * Math.log2(work + 2)) / 7.509) + 2;
+  const { Q, T } = splitSeries(
+    {
+      p: (k) => (k === 1 ? 32n : 32n * BigInt(k - 1) ** 3n * BigInt(2 * k - 3)),
+      q: (k) => 9n * (BigInt(6 * k - 1) * BigInt(6 * k - 5)) ** 2n,
+      a: (k) => BigInt(580 * k * k - 184 * k + 15),
+    },
+    1,
+    count,
+  );
+  return { mid: (T << BigInt(work)) / (64n * Q), rad: 2n, bits: work };
+}
+
+const catalanFamily = singleConstant({
+  key: 'catalan',
+  title: 'Catalan’s constant',
+  name: 'catalan',
+  weight: 2,
+  latex: 'G',
+  definition: 'G=\\sum_{k\\ge0}\\frac{(-1)^k}{(2k+1)^2}',
+  source: 'Pilehrood and Pilehrood, Discrete Math. Theor. Comput. Sci. 12 (2010) 223, binary splitting.',
+  compute: catalan,
+});
+
+interface LArgs {
+  /** Fundamental discriminant. */
+  readonly d: number;
+  readonly s: number;
+}
+
+/** L(d, s)/(π^s √|d|) for matching parity: (−1)^{1+(s−δ)/2} (1/2)(2/f)^s B_{s,χ}/s!, B_{s,χ} = f^{s−1} Σ χ(a) B_s(a/f) (Washington, "Cyclotomic fields", theorem 4.2 and the functional equation). */
+function closedCoefficient({ d, s }: LArgs): Fraction {
+  const f = Math.abs(d);
+  const polynomial = bernoulliPolynomial(s);
+  let sum: Fraction = { p: 0n, q: 1n };
+  for (let a = 1; a < f; a++) {
+    const chi = BigInt(kronecker(d, a));
+    if (chi === 0n) continue;
+    const value = polynomialAt(polynomial, BigInt(a), BigInt(f));
+    sum = addFractions(sum, { p: chi * value.p, q: value.q });
+  }
+  const half = (s - (d < 0 ? 1 : 0)) / 2;
+  const sign = half % 2 === 0 ? -1n : 1n;
+  return fraction(sign * sum.p * (1n << BigInt(s)), 2n * sum.q * BigInt(f) * factorial(s));
+}
+
+/**
+ * By blocks of constant sign pattern: for even conductor χ(n + f/2) = −χ(n), so L = Σ_j χ(j) B(j, s) with period f/2; for odd
+ * conductor (−1)^{n−1} χ(n) has antiperiod f, and its sum is (1 − χ(2) 2^{1−s}) L.
+ */
+function blockSum({ d, s }: LArgs, work: number, context: EvaluationContext): Ball {
+  const f = Math.abs(d);
+  const even = f % 2 === 0;
+  const period = even ? f / 2 : f;
+  const residues = Array.from({ length: period }, (_, j) => j + 1).filter((j) => kronecker(d, j) !== 0);
+  const [row = []] = alternatingSums(period, residues, [s], work, context);
+  const mid = residues.reduce((sum, j, r) => {
+    const sign = kronecker(d, j) * (even || j % 2 === 1 ? 1 : -1);
+    return sum + BigInt(sign) * (row[r] as bigint);
+  }, 0n);
+  const sum = { mid, rad: ALTERNATING_ERROR * BigInt(residues.length), bits: work };
+  if (even) return sum;
+  const top = 1n << BigInt(s - 1);
+  return divide(timesInteger(sum, top), fromInteger(top - BigInt(kronecker(d, 2))), work);
+}
+
+/** L(1, χ) = −(2/√d) Σ_{a<d/2} χ(a) log sin(πa/d) for even χ (Dirichlet). */
+function logarithmicValue(d: number, work: number): Ball {
+  const inner = work + 16;
+  const pi = piBall(inner + 8);
+  let above: Ball = fromInteger(1n);
+  let below: Ball = fromInteger(1n);
+  for (let a = 1; 2 * a < d; a++) {
+    const chi = kronecker(d, a);
+    if (chi === 0) continue;
+    const { sin } = sinCos(divide(timesInteger(pi, BigInt(a)), fromInteger(BigInt(d)), inner + 8), inner);
+    // 2 sin keeps the products of moderate size: together they are units of the field.
+    const factor = timesInteger(sin, 2n);
+    if (chi > 0) above = multiply(above, factor, inner);
+    else below = multiply(below, factor, inner);
+  }
+  const difference = subtract(log(below, inner), log(above, inner));
+  return divide(timesInteger(difference, 2n), sqrt(fromInteger(BigInt(d)), inner), work);
+}
+
+function evaluateL(args: LArgs, bits: number, context: EvaluationContext): Ball {
+  const { d, s } = args;
+  const matching = (s % 2 === 0) === d > 0;
+  const guard = 12 + Math.ceil(Math.log2(Math.abs(d)));
+  return toAccuracy(bits, guard, (work) => {
+    if (matching && s <= LARGEST_CLOSED) return piPower(closedCoefficient(args), s, Math.abs(d), work);
+    if (s === 1 && kronecker(d, 2) === 1) return logarithmicValue(d, work);
+    return blockSum(args, work, context);
+  });
+}
+
+const lFamily: Family<LArgs> = {
+  key: 'l-values',
+  title: 'L-values of quadratic characters',
+  names: ['L'],
+  parse: (term) => {
+    const [d = 0, s = 0] = integerArguments('L', 'L(-3,2)', term, 2);
+    if (!isFundamentalDiscriminant(d) || Math.abs(d) > LARGEST_CONDUCTOR) {
+      throw new InputError(
+        'bad-discriminant',
+        `The first argument of L must be a fundamental discriminant such as -3, -4, 5, 8, 12, of size at most ${LARGEST_CONDUCTOR}; ${d} is not.`,
+      );
+    }
+    if (s < 1)
+      throw new InputError('bad-argument', 'The second argument of L must be a positive integer, as in L(-3,2).');
+    return { d, s };
+  },
+  weight: ({ s }) => s,
+  latex: ({ d, s }) => `L(\\chi_{${d}},${s})`,
+  text: ({ d, s }) => `L(${d},${s})`,
+  isReal: () => true,
+  evaluate: evaluateL,
+  definition:
+    'L(d,s)=\\sum_{n\\ge1}\\Bigl(\\frac dn\\Bigr)\\frac1{n^s},\\quad\\text{Kronecker symbol of a fundamental discriminant }d',
+  source:
+    'Washington, "Introduction to Cyclotomic Fields", chapter 4; blocks of the alternating sum by Cohen, Rodriguez Villegas and Zagier (2000).',
+  examples: ['L(-3,2)', 'L(-3,4)', 'L(-7,2)', 'L(-8,2)', 'L(5,3)', 'L(8,3)', 'L(12,3)'],
+};
+
+const betaFamily: Family<ZetaArgs> = {
+  key: 'beta',
+  title: 'Dirichlet beta values',
+  names: ['beta'],
+  parse: (term) => {
+    const [s = 0] = integerArguments('beta', 'beta(4)', term, 1);
+    if (s < 1) throw new InputError('bad-argument', 'beta takes a positive integer, as in beta(4).');
+    return { s };
+  },
+  weight: ({ s }) => s,
+  latex: ({ s }) => `\\beta(${s})`,
+  text: ({ s }) => `beta(${s})`,
+  isReal: () => true,
+  evaluate: ({ s }, bits, context) =>
+    s === 2 ? toAccuracy(bits, 12, catalan) : evaluateL({ d: -4, s }, bits, context),
+  definition: '\\beta(s)=\\sum_{k\\ge0}\\frac{(-1)^k}{(2k+1)^s}',
+  source: 'DLMF 25.11(x); method as for L-values.',
+  examples: ['beta(2)', 'beta(3)', 'beta(4)', 'beta(6)'],
+};
+
+// biome-ignore lint/suspicious/noExplicitAny: a list of families with different argument types
+export const characterFamilies: readonly Family<any>[] = [zetaFamily, betaFamily, lFamily, catalanFamily];

@@ -1,9 +1,10 @@
 /** Recomputes a record from itself alone and says what agrees. */
 import { InputError } from '../number/errors.ts';
+import type { SearchOptions } from './problem.ts';
 import type { OutcomeKind, SearchRecord } from './record.ts';
 import { emptyRecord } from './report.ts';
 import type { SearchRequest } from './request.ts';
-import { runSearch, type SearchOptions } from './run.ts';
+import { runSearch } from './run.ts';
 
 export interface Finding {
   readonly what: string;
@@ -42,7 +43,7 @@ function asRecord(value: unknown): SearchRecord {
   if (typeof record.request !== 'object' || record.request === null) return fail('it carries no request');
   if (!OUTCOMES.includes(record.outcome as OutcomeKind)) return fail('its outcome is none of the known ones');
   if (record.engine?.method !== 'pslq' && record.engine?.method !== 'lattice') return fail('it names no method');
-  const shape = emptyRecord(record.request as SearchRequest, 'pslq', { constantsMs: 0, relationMs: 0, evidenceMs: 0 });
+  const shape = emptyRecord(record.request as SearchRequest, 'pslq');
   const missing = Object.keys(shape).filter((key) => !(key in record));
   if (missing.length > 0) return fail(`it lacks ${missing.join(', ')}`);
   return record as SearchRecord;

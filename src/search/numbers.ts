@@ -1,5 +1,6 @@
 /** The constants of a basis as balls, one a column. */
-import { type ConstantCache, evaluateMany } from '../constants/evaluate.ts';
+import type { ConstantCache } from '../constants/cache.ts';
+import { evaluateMany } from '../constants/evaluate.ts';
 import type { Ball } from '../number/ball.ts';
 import { fromInteger } from '../number/ball.ts';
 import { isComplex, toComplex, type Value } from '../number/complex.ts';

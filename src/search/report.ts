@@ -12,7 +12,7 @@ import type { SearchRequest } from './request.ts';
 export const ENGINE_VERSION = '0.1.0';
 
 /** A record with nothing found yet. */
-export function emptyRecord(request: SearchRequest, method: Method, timings: SearchRecord['timings']): SearchRecord {
+export function emptyRecord(request: SearchRequest, method: Method): SearchRecord {
   return {
     format: 'digit-assay/record',
     version: 1,
@@ -28,7 +28,7 @@ export function emptyRecord(request: SearchRequest, method: Method, timings: Sea
     verdict: null,
     diagnosis: [],
     evidence: null,
-    timings,
+    timings: { constantsMs: 0, relationMs: 0, evidenceMs: 0 },
     engine: { version: ENGINE_VERSION, method },
   };
 }

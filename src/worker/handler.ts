@@ -2,7 +2,7 @@
  * The worker's side of the protocol. Tasks run one after another; a cancel reaches a running task through its signal
  * (long tasks give the event loop a turn) and a waiting one before it starts.
  */
-import { ConstantCache } from '../constants/evaluate.ts';
+import { ConstantCache } from '../constants/cache.ts';
 import { AbortError, toErrorData } from './errors.ts';
 import type { FromWorker, ToWorker } from './messages.ts';
 import { tasks } from './tasks.ts';

@@ -1,5 +1,6 @@
 /** What each task does; importable without a worker. */
-import { type ConstantCache, evaluateTerm, weightOf } from '../constants/evaluate.ts';
+import type { ConstantCache } from '../constants/cache.ts';
+import { evaluateTerm, weightOf } from '../constants/evaluate.ts';
 import { toLatex } from '../expression/print-latex.ts';
 import { type Ball, magnitude } from '../number/ball.ts';
 import { isComplex, type Value } from '../number/complex.ts';

@@ -1,6 +1,7 @@
 /** Random values must never be recognised, planted relations always. Seeded stream of cryptographic quality. */
 import { describe, expect, it } from 'vitest';
-import { ConstantCache, evaluateTerm } from '../../src/constants/evaluate.ts';
+import { ConstantCache } from '../../src/constants/cache.ts';
+import { evaluateTerm } from '../../src/constants/evaluate.ts';
 import { parseTerm } from '../../src/expression/parse.ts';
 import { add, type Ball, fromInteger, overInteger, timesInteger } from '../../src/number/ball.ts';
 import { formatMidpoint } from '../../src/number/decimal.ts';

@@ -1,7 +1,7 @@
 /** The published problems of test/reference/problems-open.json, from digits to verdict; sources stand in that file. */
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { ConstantCache } from '../../src/constants/evaluate.ts';
+import { ConstantCache } from '../../src/constants/cache.ts';
 import { checkRecord } from '../../src/search/check.ts';
 import { runSearch } from '../../src/search/run.ts';
 

@@ -1,0 +1,196 @@
+/** From the outcome of the relation engine to the record. */
+import { assess } from '../evidence/assess.ts';
+import { vectorsLog10 } from '../evidence/counting.ts';
+import type { StabilityPoint } from '../evidence/evidence.ts';
+import { add, type Ball, containsZero, divide, fromInteger, subtract, timesInteger } from '../number/ball.ts';
+import { gcd, log10Of } from '../number/integer.ts';
+import type { Method, RelationOutcome } from '../relation/contract.ts';
+import { budgetFor, digitsNeeded } from './estimate.ts';
+import { basisValues, inColumns } from './numbers.ts';
+import { GUARD_BITS, LOG2_10, type Problem, type SearchOptions } from './problem.ts';
+import type { SearchRecord } from './record.ts';
+import { relate } from './relate.ts';
+import { emptyRecord, relationRecord } from './report.ts';
+
+/** The record of an outcome found at `digits` digits: evidence and verdict for a relation, the bound for a negative. */
+export async function judge(
+  problem: Problem,
+  outcome: RelationOutcome,
+  digits: number,
+  options: SearchOptions,
+): Promise<SearchRecord> {
+  const { request, elements, value } = problem;
+  const base = emptyRecord(request, problem.method);
+  const budget = budgetFor(value.trusted, elements.length, problem.columns);
+  if (outcome.kind === 'excluded') {
+    return {
+      ...base,
+      outcome: 'excluded',
+      verdict: 'excluded',
+      normBound: normText(outcome.normBoundLog10),
+      diagnosis: [
+        `No integer relation among these ${budget.numbers} numbers has a norm below ${normText(outcome.normBoundLog10)}, provided that the ${value.trusted} trusted digits are right.`,
+      ],
+    };
+  }
+  if (outcome.kind === 'inconclusive') {
+    const need = digitsNeeded(elements.length, 4, problem.columns);
+    const advice =
+      need > value.trusted
+        ? [
+            `This basis with coefficients of up to four digits needs about ${need} right digits; the value has ${value.trusted}.`,
+          ]
+        : [];
+    return {
+      ...base,
+      normBound: outcome.normBoundLog10 > 0 ? normText(outcome.normBoundLog10) : null,
+      diagnosis: [outcome.reason, ...advice],
+    };
+  }
+  const integers = outcome.coefficients;
+  if (integers[0] === 0n) return dependent(problem, integers, base, options);
+  const expression = expressionValue(problem, integers);
+  const stability = await repeat(problem, integers, expression, digits, options);
+  const second = await otherMethod(problem, integers, digits, options);
+  const assessment = assess({
+    value: problem.believe(value.written),
+    expression,
+    scaleLog10: problem.scaleLog10,
+    budget,
+    digits: { written: value.written, trusted: value.trusted, used: digits },
+    integers,
+    weights: elements.map((e) => e.weight),
+    confidenceLog10: outcome.confidenceLog10,
+    stability,
+    secondMethod: second,
+    searchesLog10: 0,
+  });
+  return {
+    ...base,
+    ...relationRecord(elements, integers, request.divideBy),
+    outcome: 'relation',
+    ...summary(assessment, outcome.normBoundLog10),
+  };
+}
+
+function summary({ evidence, verdict, diagnosis }: ReturnType<typeof assess>, normBoundLog10: number) {
+  const tenth = (x: number): number => Math.floor(x * 10) / 10;
+  return {
+    agreementDigits: tenth(evidence.agreementDigits),
+    surplusDigits: tenth(evidence.surplusDigits),
+    heldOut: { used: evidence.heldOut.used, predicted: evidence.heldOut.predicted },
+    normBound: normBoundLog10 > 0 ? normText(normBoundLog10) : null,
+    verdict,
+    diagnosis,
+    evidence,
+  };
+}
+
+/** −Σ cᵢ bᵢ / c₀, a column each. */
+function expressionValue(problem: Problem, integers: readonly bigint[]): Ball[] {
+  const lead = fromInteger(-(integers[0] as bigint));
+  return Array.from({ length: problem.columns }, (_, j) => {
+    let sum: Ball = fromInteger(0n);
+    problem.constants.forEach((row, k) => {
+      sum = add(sum, timesInteger(row[j] as Ball, integers[k + 1] as bigint));
+    });
+    return divide(sum, lead, sum.bits + 8);
+  });
+}
+
+const same = (a: readonly bigint[], b: readonly bigint[]): boolean =>
+  a.length === b.length && a.every((x, k) => x === b[k]);
+
+/** Repeats the search with fewer digits, as few as the relation itself needs and one step between. */
+async function repeat(
+  problem: Problem,
+  integers: readonly bigint[],
+  expression: readonly Ball[],
+  used: number,
+  options: SearchOptions,
+): Promise<StabilityPoint[]> {
+  const norm = log10Of(integers.reduce((sum, c) => sum + c * c, 0n)) / 2;
+  const least = Math.ceil(vectorsLog10(integers.length, norm) / problem.columns) + 10;
+  if (least >= used - 1) return [];
+  const points: StabilityPoint[] = [];
+  for (const digits of new Set([Math.ceil((least + used) / 2)])) {
+    const again = await relate(problem, digits, problem.method, options, null);
+    const found = again.kind === 'relation' && same(again.coefficients, integers);
+    points.push({
+      digitsUsed: digits,
+      sameRelation: found,
+      agreementDigits: found ? digitsOf(problem, expression) : 0,
+    });
+  }
+  return points;
+}
+
+function digitsOf(problem: Problem, expression: readonly Ball[]): number {
+  const value = problem.believe(problem.value.trusted);
+  const gaps = value.map((v, j) => {
+    const gap = subtract(v, expression[j] as Ball);
+    return gap.mid === 0n ? problem.value.trusted : problem.scaleLog10 - (log10Of(gap.mid) - gap.bits / LOG2_10);
+  });
+  return Math.max(0, Math.min(problem.value.trusted, ...gaps));
+}
+
+/** The other method on the same numbers. */
+async function otherMethod(
+  problem: Problem,
+  integers: readonly bigint[],
+  digits: number,
+  options: SearchOptions,
+): Promise<{ method: Method; same: boolean } | null> {
+  const method: Method = problem.method === 'pslq' ? 'lattice' : 'pslq';
+  if (method === 'pslq' && integers.length > 40) return null;
+  const again = await relate(problem, digits, method, options, null);
+  return { method, same: again.kind === 'relation' && same(again.coefficients, integers) };
+}
+
+/** A relation among the constants alone, confirmed with constants at twice the digits. */
+function dependent(
+  problem: Problem,
+  integers: readonly bigint[],
+  base: SearchRecord,
+  options: SearchOptions,
+): SearchRecord {
+  const { elements, columns } = problem;
+  const bits = 2 * Math.ceil(problem.value.written * LOG2_10) + GUARD_BITS;
+  const values = inColumns(
+    basisValues(elements, bits, { cache: options.cache, signal: options.signal }),
+    elements,
+    columns,
+  );
+  const vanishes = Array.from({ length: columns }, (_, j) =>
+    values.reduce((sum, row, k) => add(sum, timesInteger(row[j] as Ball, integers[k + 1] as bigint)), fromInteger(0n)),
+  ).every(containsZero);
+  if (!vanishes) {
+    return {
+      ...base,
+      diagnosis: [
+        'The best candidate does not involve the value and is not a relation among the constants either: the digits are too few for this basis.',
+      ],
+    };
+  }
+  const rest = integers.slice(1).reduce((g, c) => gcd(g, c), 0n);
+  const involved = elements.filter((_, k) => integers[k + 1] !== 0n).map((e) => e.text);
+  return {
+    ...base,
+    ...relationRecord(
+      elements,
+      integers.map((c) => c / (rest === 0n ? 1n : rest)),
+      undefined,
+    ),
+    outcome: 'basis-dependent',
+    diagnosis: [
+      `The constants ${involved.join(', ')} are linearly dependent: the relation holds to ${Math.floor(bits / LOG2_10)} digits without the value. Leave one of them out and search again.`,
+    ],
+  };
+}
+
+/** A norm bound as text, rounded down to two digits. */
+function normText(log10: number): string {
+  const exponent = Math.floor(log10);
+  const lead = Math.floor(10 ** (log10 - exponent) * 10) / 10;
+  return exponent < 6 ? `${Math.floor(10 ** log10 * 10) / 10}` : `${lead}e${exponent}`;
+}

@@ -1,8 +1,9 @@
 /** The lattice method as the engine sees it. */
 import { startLattice } from './lattice/index.ts';
-import type { MethodEnd, SearchMethod } from './methods.ts';
+import { type Basis, type MethodEnd, type MethodOptions, residualsOf, type SearchMethod } from './methods.ts';
 import type { Prepared } from './prepare.ts';
 import { weightRange } from './pslq/search.ts';
+import { withinErrors } from './significance.ts';
 
 /** Times that a bound which doubles believe in may fail its proof before the rest of the digits is used. */
 const ATTEMPTS = 3;
@@ -25,15 +26,21 @@ export const latticeMethod: SearchMethod = function* (prepared, options, progres
     const basis = result.basis();
     const weights = lifts.map((lift) => (result?.weightBits ?? 0) - lift);
     if (result.kind === 'bounded' && !last && !options.bounded(basis, weights)) continue;
-    const found = result.kind === 'candidate' && result.candidate !== null;
+    // Several relations that become visible together leave no gap for the search to notice: look at the basis as well.
+    const coefficients =
+      result.candidate ?? (result.kind === 'bounded' ? undefined : vanishingRow(prepared, options, basis));
     return {
-      kind: result.kind,
-      coefficients: found ? (result.candidate ?? undefined) : undefined,
+      kind: coefficients === undefined ? result.kind : 'candidate',
+      coefficients,
       basis,
       weights,
     } satisfies MethodEnd;
   }
 };
+
+function vanishingRow(prepared: Prepared, options: MethodOptions, basis: Basis): readonly bigint[] | undefined {
+  return basis.find((row) => withinErrors(prepared, row, residualsOf(prepared, row)) && options.accept(row));
+}
 
 /** The columns lifted by powers of two so that their digits all end at one weight, not below one unit. */
 function atOneScale(prepared: Prepared): {

@@ -10,7 +10,8 @@ export interface MethodProgress {
   normBoundLog10: number;
 }
 
-type Basis = readonly (readonly bigint[])[];
+/** Rows of a unimodular matrix. */
+export type Basis = readonly (readonly bigint[])[];
 
 export interface MethodOptions {
   /** Whether a vector that vanishes within the errors is to end the search. */
@@ -67,7 +68,8 @@ export function confidence(prepared: Prepared, basis: Basis, coefficients: reado
   return Math.max(0, least - Math.max(0, log10Norm(residualsOf(prepared, coefficients))));
 }
 
-function residualsOf(prepared: Prepared, row: readonly bigint[]): bigint[] {
+/** Σ rowₖ·xₖⱼ per column, in units. */
+export function residualsOf(prepared: Prepared, row: readonly bigint[]): bigint[] {
   return prepared.columns.map((_, j) =>
     row.reduce((sum, c, k) => (c === 0n ? sum : sum + c * (prepared.integers[k]?.[j] as bigint)), 0n),
   );

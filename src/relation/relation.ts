@@ -28,8 +28,11 @@ export function startRelation(request: RelationRequest): RelationRun {
 }
 
 /** A generator that yields every few milliseconds, as a run in steps. */
-function inSteps(work: Generator<void, RelationOutcome, void>, progress: RelationProgress): RelationRun {
-  let outcome: RelationOutcome | undefined;
+export function inSteps<Outcome>(
+  work: Generator<void, Outcome, void>,
+  progress: RelationProgress,
+): { step(): Outcome | undefined; readonly progress: RelationProgress } {
+  let outcome: Outcome | undefined;
   return {
     progress,
     step() {
@@ -82,12 +85,13 @@ function outcomeOf(
     const confidenceLog10 = confidence(prepared, end.basis, coefficients);
     return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10, iterations };
   }
-  const asked = request.maxNormLog10 ?? Math.log10(prepared.integers.length) / 2;
+  const unstable = end.kind === 'unstable' || !proved;
+  const asked =
+    request.maxNormLog10 ?? (unstable ? Number.POSITIVE_INFINITY : Math.log10(prepared.integers.length) / 2);
   if (normBoundLog10 >= asked) return { kind: 'excluded', normBoundLog10, iterations };
-  const reason =
-    end.kind === 'unstable' || !proved
-      ? 'Double precision did not suffice to reduce these numbers; the other method or other digits may decide.'
-      : shortage(prepared, request.maxNormLog10 ?? 1);
+  const reason = unstable
+    ? 'Double precision did not suffice to reduce these numbers; the other method or other digits may decide.'
+    : shortage(prepared, request.maxNormLog10 ?? 1);
   return { kind: 'inconclusive', reason, normBoundLog10, iterations };
 }
 

@@ -6,10 +6,11 @@ import { toComplex, type Value } from '../../number/complex.ts';
 import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext, Family } from '../family.ts';
 import { isRational, rational, type Term } from '../term.ts';
+import { termLatex } from '../term-latex.ts';
+import { termText } from '../term-text.ts';
 import { integerIndices, weightOf } from './indices.ts';
 import { evaluateIntegrals, type IteratedIntegral, pathLetter, refuseDivergent } from './iterated.ts';
 import { isPlainlyReal, polarOf } from './polar.ts';
-import { termLatex, termText } from './term-text.ts';
 
 export interface HyperlogArgs {
   readonly integral: IteratedIntegral;

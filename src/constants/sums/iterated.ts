@@ -7,12 +7,12 @@ import { add, divide, isComplex, multiply, toComplex, type Value } from '../../n
 import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext } from '../family.ts';
 import { call, isRational, type Term } from '../term.ts';
+import { termText } from '../term-text.ts';
 import type { Letters, Rational } from './general-tails.ts';
 import { evaluateWordsOnPath } from './path.ts';
 import { invertPolar, multiplyPolar, type Polar, polarOf } from './polar.ts';
 import { evaluateRootWords, ringOf } from './root-words.ts';
 import { leastCommonMultiple } from './roots.ts';
-import { termText } from './term-text.ts';
 import { letterOf, type Word } from './words.ts';
 
 /** A letter divided by the end point: 0, 1, or anything else with its exact form where it has one. */

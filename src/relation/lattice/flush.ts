@@ -81,7 +81,7 @@ export function* flush(state: LatticeState, rowBits: number, reducedAt: number):
   if (state.transformBits === 0) return;
   const earlier = { rowsAt: state.rowsAt, residualLimbs: state.residuals.used, basisLimbs: state.basis.used };
   growBasis(state, Math.max(rowBits, 1));
-  const planes = splitDigits(state, state.transform, rowSums(kernels.view(), state.transform, stride, active).sum);
+  const planes = splitDigits(state, state.transform, rowSums(kernels.view(), state.transform, stride, active, active).sum);
   for (const table of [state.residuals, state.basis]) {
     const batch = table.groups > state.m || table.used > PIECE ? 1 : table.groups;
     for (let g = 0; g < table.groups; g++) {
@@ -160,13 +160,20 @@ export function undoFlush(state: LatticeState): boolean {
   return true;
 }
 
-/** Largest row sum of absolute values (NaN if any is) and largest absolute value of an integer matrix. */
-export function rowSums(f: Float64Array, at: number, stride: number, n: number): { sum: number; largest: number } {
+/** Largest row sum of absolute values (NaN if any is) and largest absolute value of an integer matrix that is zero from column i + band on in row i. */
+export function rowSums(
+  f: Float64Array,
+  at: number,
+  stride: number,
+  n: number,
+  band: number,
+): { sum: number; largest: number } {
   let sum = 0;
   let largest = 0;
   for (let i = 0; i < n; i++) {
     let row = 0;
-    for (let j = 0; j < n; j++) {
+    const end = Math.min(n, i + band);
+    for (let j = 0; j < end; j++) {
       const x = Math.abs(f[at + i * stride + j] as number);
       row += x;
       if (x > largest) largest = x;

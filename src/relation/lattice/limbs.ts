@@ -15,28 +15,24 @@ export function limbsFor(bits: number): number {
 
 /** Writes `value` into f[at … at + length). Throws RangeError when it does not fit. */
 export function writeLimbs(value: bigint, f: Float64Array, at: number, length: number): void {
+  for (let k = 0; k < length; k++) f[at + k] = 0; // a call of fill costs more on runs this short
+  if (value === 0n) return;
   const sign = value < 0n ? -1 : 1;
   const hex = (value < 0n ? -value : value).toString(16);
   let over = 0;
   let limb = 0;
-  const put = (digit: number): void => {
-    let x = digit + over;
-    over = 0;
-    if (x >= HALF) {
-      x -= LIMB;
-      over = 1;
+  for (let end = hex.length; end > 0 || over > 0; end -= HEX_PER_PAIR) {
+    const pair = end > 0 ? Number.parseInt(hex.slice(Math.max(0, end - HEX_PER_PAIR), end), 16) : 0;
+    const high = Math.floor(pair / LIMB);
+    for (let digit = pair - high * LIMB, k = 0; k < 2; digit = high, k++) {
+      let x = digit + over;
+      over = x >= HALF ? 1 : 0;
+      x -= over * LIMB;
+      if (limb < length) f[at + limb] = sign * x;
+      else if (x !== 0) throw new RangeError(`writeLimbs: expected at most ${length} limbs, got a larger integer`);
+      limb++;
     }
-    if (limb < length) f[at + limb] = sign * x;
-    else if (x !== 0) throw new RangeError(`writeLimbs: expected at most ${length} limbs, got a larger integer`);
-    limb++;
-  };
-  for (let end = hex.length; end > 0; end -= HEX_PER_PAIR) {
-    const pair = Number.parseInt(hex.slice(Math.max(0, end - HEX_PER_PAIR), end), 16);
-    put(pair % LIMB);
-    put(Math.floor(pair / LIMB));
   }
-  put(0);
-  while (limb < length) put(0);
 }
 
 /** The integer in f[at … at + length); any limbs of size below 2^52. */

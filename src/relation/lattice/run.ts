@@ -60,6 +60,8 @@ const DRIFT_TOO_MUCH = 0.3;
 const DRIFT_TO_SPARE = 0.001;
 /** Transforms beyond this have lost too many bits of the factor. */
 const LARGE_TRANSFORM = 2 ** 30;
+/** Entries of the transform stay below 2^this, so that its products are exact. */
+const TRANSFORM_BITS = 52;
 /** A residual this many bits below all others is put to the exact test at once. */
 const GAP_TO_TEST = 24;
 /** Bits by which the window must resolve the shortest row. */
@@ -216,7 +218,17 @@ export class LatticeSearch {
   private windowShort(b: number): boolean {
     const { state, shape } = this;
     if (state.transformBits === 0) return false;
-    return windowErrorBits(state) + WINDOW_GUARD > state.e - b + state.scale + shape.least;
+    const room = state.e - b + state.scale + shape.least - WINDOW_GUARD;
+    if (windowErrorBits(state) > room) this.measureTransform();
+    return windowErrorBits(state) > room;
+  }
+
+  /** The bound for the entries of the transform, which products let grow too fast, from the entries themselves. */
+  private measureTransform(): void {
+    const { state } = this;
+    if (state.transformBits === 0) return;
+    const { largest } = rowSums(state.kernels.view(), state.transform, state.stride, state.active, state.active);
+    state.transformBits = Math.log2(largest) + 1e-6;
   }
 
   private gapShows(): boolean {
@@ -234,10 +246,10 @@ export class LatticeSearch {
     progress.iterations++;
     const shape = sweepShape(active);
     sweep(state, shape);
-    const { sum, largest } = rowSums(kernels.view(), state.u, stride, active);
+    const { sum, largest } = rowSums(kernels.view(), state.u, stride, active, shape.width + 1);
     if (!(sum < 2 ** 50)) return yield* this.abandonStage(before);
-    const grown = state.transformBits + Math.log2(sum);
-    if (grown > 52) yield* this.flushRows(before);
+    if (state.transformBits + Math.log2(sum) > TRANSFORM_BITS) this.measureTransform();
+    if (state.transformBits + Math.log2(sum) > TRANSFORM_BITS) yield* this.flushRows(before);
     const band = shape.width + 1;
     applyToWindow(state, sum, band);
     if (state.transformBits === 0) kernels.view().copyWithin(state.transform, state.u, state.u + active * stride);
@@ -245,7 +257,7 @@ export class LatticeSearch {
       kernels.multiply(state.spare, stride, state.u, stride, state.transform, stride, active, active, active, band, 0);
       [state.transform, state.spare] = [state.spare, state.transform];
     }
-    state.transformBits = 1 + Math.log2(rowSums(kernels.view(), state.transform, stride, active).largest);
+    state.transformBits += Math.log2(sum) + 1e-6;
     this.shape = profile(state);
     const periodic = this.checksum === undefined && progress.iterations % BLIND_STAGES === 0;
     if (!periodic && largest <= LARGE_TRANSFORM && this.checkError() <= CHECK_TOLERANCE) {

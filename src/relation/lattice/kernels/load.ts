@@ -7,8 +7,6 @@ export type KernelChoice = 'auto' | 'typescript';
 
 const PAGE = 65536;
 const SCRATCH_DOUBLES = 8192;
-/** Grow by at least this many pages at a time: 4 MB. */
-const GROWTH = 64;
 
 type Loops = Omit<Kernels, 'kind' | 'allocate' | 'view'> & { setScratch(at: number): void };
 
@@ -38,7 +36,7 @@ function webAssemblyKernels(module: WebAssembly.Module): Kernels {
     const at = used;
     used += length + (length & 1);
     const missing = Math.ceil((used * 8) / PAGE) - memory.buffer.byteLength / PAGE;
-    if (missing > 0) memory.grow(Math.max(missing, GROWTH));
+    if (missing > 0) memory.grow(missing);
     return at;
   };
   loops.setScratch(allocate(SCRATCH_DOUBLES));

@@ -278,17 +278,61 @@ export function reduce(
       exchange(block, bs, inverse, w, u, q, us, k, sqrt(square));
       k = k > 1 ? k - 1 : 1;
     } else {
-      for (let j = k - 2; j >= 0; j--) {
-        const f = f64.load(high + bytes(j)) * f64.load(inverse + bytes(j)) + ROUND - ROUND;
-        if (f == 0) continue;
-        operations++;
-        subtractRow(high, block + <usize>j * bs, j, uh, u + <usize>j * us, w, f);
-      }
+      operations += reduceRow(block, bs, inverse, u, us, k, w);
       k++;
     }
   }
   for (let i = 0; i < w; i++) memory.copy(corner + <usize>i * ls, block + <usize>i * bs, bytes(i + 1));
   transpose(q, us, w);
+  return operations;
+}
+
+/** Size-reduces row k of the block against rows k − 2 … 0: singly until four are left to be taken together. */
+function reduceRow(block: usize, bs: usize, inverse: usize, u: usize, us: usize, k: i32, w: i32): i32 {
+  const x = block + <usize>k * bs;
+  const uk = u + <usize>k * us;
+  let operations = 0;
+  let j = k - 2;
+  for (; j >= 0 && (j & 3) != 3; j--) {
+    const f = f64.load(x + bytes(j)) * f64.load(inverse + bytes(j)) + ROUND - ROUND;
+    if (f == 0) continue;
+    operations++;
+    subtractRow(x, block + <usize>j * bs, j, uk, u + <usize>j * us, w, f);
+  }
+  for (; j >= 0; j -= 4) {
+    const at = bytes(j - 3);
+    const r3 = block + <usize>j * bs + at;
+    const r2 = r3 - bs;
+    const r1 = r2 - bs;
+    const r0 = r1 - bs;
+    let x3 = f64.load(x + at, 24);
+    let x2 = f64.load(x + at, 16);
+    let x1 = f64.load(x + at, 8);
+    let x0 = f64.load(x + at);
+    const f3 = x3 * f64.load(inverse + at, 24) + ROUND - ROUND;
+    x3 -= f3 * f64.load(r3, 24);
+    x2 -= f3 * f64.load(r3, 16);
+    x1 -= f3 * f64.load(r3, 8);
+    x0 -= f3 * f64.load(r3);
+    const f2 = x2 * f64.load(inverse + at, 16) + ROUND - ROUND;
+    x2 -= f2 * f64.load(r2, 16);
+    x1 -= f2 * f64.load(r2, 8);
+    x0 -= f2 * f64.load(r2);
+    const f1 = x1 * f64.load(inverse + at, 8) + ROUND - ROUND;
+    x1 -= f1 * f64.load(r1, 8);
+    x0 -= f1 * f64.load(r1);
+    const f0 = x0 * f64.load(inverse + at) + ROUND - ROUND;
+    x0 -= f0 * f64.load(r0);
+    const count = i32(f3 != 0) + i32(f2 != 0) + i32(f1 != 0) + i32(f0 != 0);
+    if (count == 0) continue;
+    operations += count;
+    f64.store(x + at, x3, 24);
+    f64.store(x + at, x2, 16);
+    f64.store(x + at, x1, 8);
+    f64.store(x + at, x0);
+    subtractFour(x, r3 - at, bs, j - 3, f3, f2, f1, f0);
+    subtractFour(uk, u + <usize>j * us, us, w, f3, f2, f1, f0);
+  }
   return operations;
 }
 
@@ -375,62 +419,15 @@ export function sizeReduce(
   const l = bytes(lAt);
   const t = bytes(tAt);
   for (let i = from; i < to; i++) {
-    const li = l + <usize>i * ls;
+    const x = l + <usize>i * ls;
     const ti = t + <usize>i * ts;
     let j = i - 1;
-    for (; j >= 3; j -= 4) {
+    for (; j >= 0 && (j & 3) != 3; j--) {
       const lj = l + <usize>j * ls;
-      const end = min(cols, j + band);
-      const p = li + bytes(j);
-      let f3 = f64.load(p) / f64.load(lj + bytes(j)) + ROUND - ROUND;
-      let x2 = f64.load(li + bytes(j - 1));
-      let x1 = f64.load(li + bytes(j - 2));
-      let x0 = f64.load(li + bytes(j - 3));
-      if (f3 != 0) {
-        const r = lj + bytes(j - 3);
-        f64.store(p, f64.load(p) - f3 * f64.load(r, 24));
-        x2 -= f3 * f64.load(r, 16);
-        x1 -= f3 * f64.load(r, 8);
-        x0 -= f3 * f64.load(r);
-      }
-      const r2 = lj - ls + bytes(j - 3);
-      const f2 = x2 / f64.load(r2, 16) + ROUND - ROUND;
-      x2 -= f2 * f64.load(r2, 16);
-      x1 -= f2 * f64.load(r2, 8);
-      x0 -= f2 * f64.load(r2);
-      const r1 = r2 - ls;
-      const f1 = x1 / f64.load(r1, 8) + ROUND - ROUND;
-      x1 -= f1 * f64.load(r1, 8);
-      x0 -= f1 * f64.load(r1);
-      const r0 = r1 - ls;
-      const f0 = x0 / f64.load(r0) + ROUND - ROUND;
-      x0 -= f0 * f64.load(r0);
-      if (f3 == 0 && f2 == 0 && f1 == 0 && f0 == 0) continue;
-      f64.store(li + bytes(j - 1), x2);
-      f64.store(li + bytes(j - 2), x1);
-      f64.store(li + bytes(j - 3), x0);
-      const even = (j - 3) & ~1;
-      subtractFour(li, lj, ls, even, f3, f2, f1, f0);
-      if ((j - 3) & 1) {
-        const q = lj + bytes(even);
-        const y = li + bytes(even);
-        f64.store(
-          y,
-          f64.load(y) -
-            f3 * f64.load(q) -
-            f2 * f64.load(q - ls) -
-            f1 * f64.load(q - 2 * ls) -
-            f0 * f64.load(q - 3 * ls),
-        );
-      }
-      subtractFour(ti, t + <usize>j * ts, ts, end, f3, f2, f1, f0);
-    }
-    for (; j >= 0; j--) {
-      const lj = l + <usize>j * ls;
-      const f = f64.load(li + bytes(j)) / f64.load(lj + bytes(j)) + ROUND - ROUND;
+      const f = f64.load(x + bytes(j)) / f64.load(lj + bytes(j)) + ROUND - ROUND;
       if (f == 0) continue;
       for (let k = 0; k <= j; k++) {
-        const y = li + bytes(k);
+        const y = x + bytes(k);
         f64.store(y, f64.load(y) - f * f64.load(lj + bytes(k)));
       }
       const end = min(cols, j + band);
@@ -440,6 +437,38 @@ export function sizeReduce(
         const y = ti + bytes(k);
         v128.store(y, f64x2.sub(v128.load(y), f64x2.mul(ff, v128.load(tj + bytes(k)))));
       }
+    }
+    for (; j >= 0; j -= 4) {
+      const at = bytes(j - 3);
+      const r3 = l + <usize>j * ls + at;
+      const r2 = r3 - ls;
+      const r1 = r2 - ls;
+      const r0 = r1 - ls;
+      let x3 = f64.load(x + at, 24);
+      let x2 = f64.load(x + at, 16);
+      let x1 = f64.load(x + at, 8);
+      let x0 = f64.load(x + at);
+      const f3 = x3 / f64.load(r3, 24) + ROUND - ROUND;
+      x3 -= f3 * f64.load(r3, 24);
+      x2 -= f3 * f64.load(r3, 16);
+      x1 -= f3 * f64.load(r3, 8);
+      x0 -= f3 * f64.load(r3);
+      const f2 = x2 / f64.load(r2, 16) + ROUND - ROUND;
+      x2 -= f2 * f64.load(r2, 16);
+      x1 -= f2 * f64.load(r2, 8);
+      x0 -= f2 * f64.load(r2);
+      const f1 = x1 / f64.load(r1, 8) + ROUND - ROUND;
+      x1 -= f1 * f64.load(r1, 8);
+      x0 -= f1 * f64.load(r1);
+      const f0 = x0 / f64.load(r0) + ROUND - ROUND;
+      x0 -= f0 * f64.load(r0);
+      if (f3 == 0 && f2 == 0 && f1 == 0 && f0 == 0) continue;
+      f64.store(x + at, x3, 24);
+      f64.store(x + at, x2, 16);
+      f64.store(x + at, x1, 8);
+      f64.store(x + at, x0);
+      subtractFour(x, r3 - at, ls, j - 3, f3, f2, f1, f0);
+      subtractFour(ti, t + <usize>j * ts, ts, min(cols, j + band), f3, f2, f1, f0);
     }
   }
 }

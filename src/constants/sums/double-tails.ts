@@ -39,13 +39,14 @@ export interface TailsSize {
 export const REAL_STEP = 4;
 export const PAIR_STEP = 8;
 
-/** Sizes of a pass whose answers are to have a radius of at most 2^−bits for words of up to `length` letters. */
-export function tailsSize(bits: number, length: number, unitsPerStep: number): TailsSize {
-  for (let guard = 16; ; guard += 4) {
+/** Sizes of a pass whose answers are to have a radius of at most 2^−bits for words of up to `length` letters; errors may grow by 2^log2Growth a step. */
+export function tailsSize(bits: number, length: number, unitsPerStep: number, log2Growth = 0): TailsSize {
+  for (let guard = 16; ; ) {
     const work = bits + guard;
     const steps = Math.ceil(work / 2) + length;
-    const log2Radius = tailsRadius(steps, length, unitsPerStep);
+    const log2Radius = tailsRadius(steps, length, unitsPerStep) + steps * log2Growth;
     if (log2Radius <= guard) return { work, steps, radius: 1n << BigInt(Math.ceil(log2Radius)) };
+    guard += Math.max(4, Math.floor((log2Radius - guard) / 2));
   }
 }
 

@@ -1,6 +1,6 @@
 /**
  * Multiple polylogarithms at roots of unity: MPL(s₁,…,s_d; z₁,…,z_d) = Σ_{n₁>…>n_d>0} Π z_j^{n_j} / n_j^{s_j}.
- * Method and proof of the radius: see double-tails.ts for the orders 1, 2, 3, 4, 6 and general-tails.ts for 8 and 12.
+ * Method and proof of the radius: see double-tails.ts for the orders 1, 2, 3, 4, 6 and ring-tails.ts for 8 and 12.
  */
 import { InputError } from '../../number/errors.ts';
 import type { Family } from '../family.ts';

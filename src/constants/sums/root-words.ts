@@ -12,9 +12,8 @@ import {
   realTails,
   tailsSize,
 } from './double-tails.ts';
-import type { Letters } from './general-tails.ts';
-import { evaluateWordsOnPath } from './path.ts';
 import { type Plan, planWords } from './plan.ts';
+import { type RingOrder, ringSize, ringTails } from './ring-tails.ts';
 import { rootSymmetry, wordAtRoots } from './words.ts';
 
 /** A convergent nested sum: indices s_j ≥ 1 and arguments e^{2πi·exponents_j/order}; s₁ = 1 only with exponent ≠ 0. */
@@ -83,9 +82,9 @@ export function evaluateRootWords(
   bits: number,
   context: EvaluationContext,
 ): Value[] {
-  if (order === 8 || order === 12) return evaluateWordsOnPath(words, rootLetters(order), bits, context);
   const plan = planWords(words, rootSymmetry(order));
   if (order === 2) return realAnswers(plan, bits, context);
+  if (order === 8 || order === 12) return ringAnswers(plan, order, bits, context);
   return pairAnswers(plan, order === 4 ? gaussian : eisenstein, bits, context);
 }
 
@@ -117,16 +116,28 @@ function pairAnswers(plan: Plan, ring: PairRing, bits: number, context: Evaluati
   });
 }
 
-/** The letters e^{2πi·e/order}, e = 1 … order − 1, with the codes 1 + e. */
-function rootLetters(order: 8 | 12): Letters {
-  return {
-    values: (bits) => rootValues(order, bits),
-    exact: Array.from({ length: order - 1 }, (_, k) => (2 * (k + 1) === order ? { p: -1n, q: 1n } : null)),
-  };
+function ringAnswers(plan: Plan, order: RingOrder, bits: number, context: EvaluationContext): ComplexBall[] {
+  const size = ringSize(plan, order, bits + 3);
+  const values = ringTails(plan, order, size, context);
+  const roots = rootValues(order, size.work);
+  const error: Ball = { mid: 0n, rad: size.radius, bits: size.work };
+  return plan.answers.map(({ core, sign, conjugate }) => {
+    const [first = 0n, ...rest] = values[core] as bigint[];
+    let re: Ball = { mid: first, rad: 0n, bits: size.work };
+    let im: Ball = fromInteger(0n);
+    rest.forEach((x, j) => {
+      const root = roots[j] as ComplexBall;
+      const coordinate = { mid: x, rad: 0n, bits: size.work };
+      re = add(re, multiply(coordinate, root.re, size.work));
+      im = add(im, multiply(coordinate, root.im, size.work));
+    });
+    const part = (x: Ball, flip: boolean): Ball => withBits(add(flip ? negate(x) : x, error), bits + 3);
+    return { re: part(re, sign < 0), im: part(im, sign < 0 !== conjugate) };
+  });
 }
 
-/** e^{2πi·e/order} for e = 1 … order − 1, for the orders 8 and 12. */
-function rootValues(order: 8 | 12, bits: number): ComplexBall[] {
+/** e^{2πi·e/order} for e = 1 … order − 1. */
+function rootValues(order: RingOrder, bits: number): ComplexBall[] {
   const zero = fromInteger(0n);
   const one = fromInteger(1n);
   const half = timesPowerOfTwo(one, -1);

@@ -81,7 +81,11 @@ export function* flush(state: LatticeState, rowBits: number, reducedAt: number):
   if (state.transformBits === 0) return;
   const earlier = { rowsAt: state.rowsAt, residualLimbs: state.residuals.used, basisLimbs: state.basis.used };
   growBasis(state, Math.max(rowBits, 1));
-  const planes = splitDigits(state, state.transform, rowSums(kernels.view(), state.transform, stride, active, active).sum);
+  const planes = splitDigits(
+    state,
+    state.transform,
+    rowSums(kernels.view(), state.transform, stride, active, active).sum,
+  );
   for (const table of [state.residuals, state.basis]) {
     const batch = table.groups > state.m || table.used > PIECE ? 1 : table.groups;
     for (let g = 0; g < table.groups; g++) {

@@ -5,6 +5,8 @@ const LIMB = 4194304; // 2^22
 const PER_LIMB = 1 / LIMB;
 /** LLL on doubles may cycle when rounding errors reach the size of the diagonal; then it stops, and the checksum decides. */
 const MAX_SWAPS_PER_ROW = 400;
+/** Only the neighbour decides whether to swap; against the other rows a row is size-reduced when it has grown by this much, and at the end. */
+const LONG = 4;
 
 export function typescriptKernels(): Kernels {
   let memory = new Float64Array(4096);
@@ -180,16 +182,24 @@ function reduce(
       swap(f, block, w, u, q, stride, k, Math.sqrt(square));
       k = k > 1 ? k - 1 : 1;
     } else {
-      for (let j = k - 2; j >= 0; j--) subtract(k, j);
+      if (isLong(block, k * w, inverse, k - 1)) for (let j = k - 2; j >= 0; j--) subtract(k, j);
       k++;
     }
   }
+  for (let i = 1; i < w; i++) for (let j = i - 1; j >= 0; j--) subtract(i, j);
   for (let i = 0; i < w; i++) {
     const to = l + (start + i) * lStride + start;
     for (let j = 0; j <= i; j++) f[to + j] = block[i * w + j] as number;
   }
   transpose(f, q, stride, w);
   return operations;
+}
+
+function isLong(block: Float64Array, row: number, inverse: number, count: number): boolean {
+  for (let j = 0; j < count; j++) {
+    if (Math.abs((block[row + j] as number) * (block[inverse + j] as number)) > LONG) return true;
+  }
+  return false;
 }
 
 /** Exchanges rows k − 1 and k of the block and reflects columns k − 1 and k so that it is lower triangular again, diagonal positive. */

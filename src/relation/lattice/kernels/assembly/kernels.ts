@@ -8,6 +8,7 @@ const ROUND: f64 = 6755399441055744.0; // 1.5·2^52
 const LIMB: f64 = 4194304.0; // 2^22
 const PER_LIMB: f64 = 1.0 / 4194304.0;
 const MAX_SWAPS_PER_ROW: i32 = 400;
+const LONG: f64 = 4;
 
 let scratch: usize = 0;
 
@@ -278,21 +279,43 @@ export function reduce(
       exchange(block, bs, inverse, w, u, q, us, k, sqrt(square));
       k = k > 1 ? k - 1 : 1;
     } else {
-      operations += reduceRow(block, bs, inverse, u, us, k, w);
+      if (isLong(high, inverse, k - 1)) operations += reduceRow(block, bs, inverse, u, us, k, k - 2, w);
       k++;
     }
   }
+  for (let i = 1; i < w; i++) operations += reduceRow(block, bs, inverse, u, us, i, i - 1, w);
   for (let i = 0; i < w; i++) memory.copy(corner + <usize>i * ls, block + <usize>i * bs, bytes(i + 1));
   transpose(q, us, w);
   return operations;
 }
 
-/** Size-reduces row k of the block against rows k − 2 … 0: singly until four are left to be taken together. */
-function reduceRow(block: usize, bs: usize, inverse: usize, u: usize, us: usize, k: i32, w: i32): i32 {
+/** Whether any of the first `count` entries exceeds LONG times its diagonal. */
+function isLong(row: usize, inverse: usize, count: i32): bool {
+  let most = f64x2.splat(0);
+  const stop = bytes(count & ~1);
+  let at: usize = 0;
+  for (; at < stop; at += 16) {
+    most = f64x2.max(most, f64x2.abs(f64x2.mul(v128.load(row + at), v128.load(inverse + at))));
+  }
+  if (count & 1 && abs(f64.load(row + at) * f64.load(inverse + at)) > LONG) return true;
+  return max(f64x2.extract_lane(most, 0), f64x2.extract_lane(most, 1)) > LONG;
+}
+
+/** Size-reduces row k of the block against rows `from` … 0: singly until a multiple of four is left, then four together. */
+function reduceRow(
+  block: usize,
+  bs: usize,
+  inverse: usize,
+  u: usize,
+  us: usize,
+  k: i32,
+  from: i32,
+  w: i32,
+): i32 {
   const x = block + <usize>k * bs;
   const uk = u + <usize>k * us;
   let operations = 0;
-  let j = k - 2;
+  let j = from;
   for (; j >= 0 && (j & 3) != 3; j--) {
     const f = f64.load(x + bytes(j)) * f64.load(inverse + bytes(j)) + ROUND - ROUND;
     if (f == 0) continue;

@@ -19,14 +19,19 @@ export function roundTo(x: Value, bits: number): Value {
  * precision has passed 4·bits + 4000.
  */
 export function toAccuracy<T extends Value>(bits: number, guard: number, compute: (work: number) => T): T {
+  return allToAccuracy(bits, guard, (work) => [compute(work)])[0] as T;
+}
+
+/** As `toAccuracy` for several values that are computed together. */
+export function allToAccuracy<T extends Value>(bits: number, guard: number, compute: (work: number) => T[]): T[] {
   const limit = 4 * bits + 4000;
   let work = bits + guard;
   for (;;) {
     let missing: number;
     try {
-      const value = compute(work);
-      missing = bits + 1 - accuracyOf(value);
-      if (missing <= 0) return roundTo(value, bits + 2) as T;
+      const values = compute(work);
+      missing = bits + 1 - values.reduce((least, x) => Math.min(least, accuracyOf(x)), Number.POSITIVE_INFINITY);
+      if (missing <= 0) return values.map((x) => roundTo(x, bits + 2) as T);
       if (work > limit) throw new PrecisionError('toAccuracy: the result cannot be told at this precision');
     } catch (error) {
       if (!(error instanceof PrecisionError) || work > limit) throw error;

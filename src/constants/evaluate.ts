@@ -113,7 +113,9 @@ function fill(cache: ConstantCache, atoms: readonly Atom[], bits: number, contex
       family.evaluateMany !== undefined
         ? family.evaluateMany(args, bits, inner)
         : args.map((one) => family.evaluate(one, bits, inner));
-    members.forEach(({ text }, j) => cache.put(text, bits, values[j] as Value));
+    members.forEach(({ text }, j) => {
+      cache.put(text, bits, values[j] as Value);
+    });
     done += share;
     context.onProgress?.(done);
   }

@@ -1,8 +1,11 @@
 /** The catalogue: all families, and which of them a typed symbol or call belongs to. */
 import { InputError } from '../number/errors.ts';
+import { circularFamilies } from './circular.ts';
 import { elementaryFamilies } from './elementary.ts';
 import type { Family } from './family.ts';
+import { hurwitzFamilies } from './hurwitz.ts';
 import { characterFamilies } from './l-values.ts';
+import { polylogFamily } from './polylog.ts';
 import { OPERATIONS, ROOT_SYMBOLS } from './structure.ts';
 import { sumFamilies } from './sums/index.ts';
 import type { CallTerm, SymbolTerm } from './term.ts';
@@ -17,7 +20,14 @@ export interface Member {
 }
 
 /** In the order in which families that share a name are asked. */
-export const families: readonly AnyFamily[] = [...elementaryFamilies, ...characterFamilies, ...sumFamilies];
+export const families: readonly AnyFamily[] = [
+  ...elementaryFamilies,
+  ...characterFamilies,
+  ...hurwitzFamilies,
+  polylogFamily,
+  ...circularFamilies,
+  ...sumFamilies,
+];
 
 const byName = new Map<string, AnyFamily[]>();
 

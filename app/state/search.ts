@@ -1,0 +1,35 @@
+/** Runs the search of one value and keeps the store informed. */
+import type { SearchRequest } from '../../src/search/request.ts';
+import type { EngineClient } from '../../src/worker/client.ts';
+import { AbortError } from '../../src/worker/errors.ts';
+import type { ValueEntry } from './project.ts';
+import type { BenchStore } from './store.ts';
+
+/** The request that a value's sheet stands for. */
+export function requestOf(value: ValueEntry): SearchRequest {
+  const divideBy = value.divideBy.trim();
+  return {
+    value: value.text,
+    basis: value.basis,
+    ...(value.trustedDigits === null ? {} : { trustedDigits: value.trustedDigits }),
+    ...(divideBy === '' ? {} : { divideBy }),
+  };
+}
+
+export async function startSearch(store: BenchStore, engine: EngineClient, value: ValueEntry): Promise<void> {
+  const { id } = value;
+  if (store.getState().running[id] !== undefined) return;
+  const controller = new AbortController();
+  const actions = store.getState();
+  actions.searchStarted(id, controller);
+  try {
+    const record = await engine.call('search', requestOf(value), {
+      signal: controller.signal,
+      onProgress: (progress) => actions.searchMoved(id, progress),
+    });
+    actions.searchEnded(id, { record });
+  } catch (error) {
+    if (error instanceof AbortError) actions.searchEnded(id, { cancelled: true });
+    else actions.searchEnded(id, { problem: error instanceof Error ? error.message : String(error) });
+  }
+}

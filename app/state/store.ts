@@ -1,0 +1,123 @@
+/** The page's one store, made without React. */
+import { createStore, type StoreApi } from 'zustand/vanilla';
+import type { SearchProgress, SearchRecord } from '../../src/search/record.ts';
+import { applyEverywhere, edit, type History, redo, startHistory, undo } from './history.ts';
+import {
+  addRecord,
+  addValue,
+  changeValue,
+  type Project,
+  removeBasisSet,
+  removeValue,
+  saveBasisSet,
+  type ValueChange,
+} from './project.ts';
+
+export type SaveState =
+  | { readonly kind: 'saved' }
+  | { readonly kind: 'saving' }
+  | { readonly kind: 'failed'; readonly reason: string }
+  | { readonly kind: 'elsewhere' };
+
+export interface Running {
+  readonly progress: SearchProgress | null;
+  readonly controller: AbortController;
+}
+
+export interface BenchState {
+  readonly history: History<Project>;
+  /** Searches under way, by value. */
+  readonly running: Readonly<Record<string, Running>>;
+  /** One plain sentence about the last search of a value that could not be carried out. */
+  readonly problems: Readonly<Record<string, string>>;
+  readonly save: SaveState;
+  /** What a screen reader hears. */
+  readonly announcement: string;
+}
+
+export interface BenchActions {
+  change(id: string, change: ValueChange): void;
+  add(): void;
+  remove(id: string): void;
+  select(id: string): void;
+  rename(title: string): void;
+  keepBasis(name: string, entries: readonly string[]): void;
+  dropBasis(id: string): void;
+  undo(): void;
+  redo(): void;
+  searchStarted(id: string, controller: AbortController): void;
+  searchMoved(id: string, progress: SearchProgress): void;
+  searchEnded(id: string, result: { record: SearchRecord } | { problem: string } | { cancelled: true }): void;
+  setSave(save: SaveState): void;
+  announce(text: string): void;
+}
+
+export type BenchStore = StoreApi<BenchState & BenchActions>;
+
+function newId(): string {
+  return crypto.randomUUID();
+}
+
+export function createBenchStore(project: Project): BenchStore {
+  return createStore<BenchState & BenchActions>()((set, get) => {
+    const apply = (key: string, next: (project: Project) => Project): void =>
+      set(({ history }) => ({ history: edit(history, next(history.present), key, Date.now()) }));
+    const without = <T>(table: Readonly<Record<string, T>>, id: string): Record<string, T> =>
+      Object.fromEntries(Object.entries(table).filter(([key]) => key !== id));
+    return {
+      history: startHistory(project),
+      running: {},
+      problems: {},
+      save: { kind: 'saved' },
+      announcement: '',
+      change: (id, change) => apply(`${id}/${Object.keys(change).join()}`, (p) => changeValue(p, id, change)),
+      add: () => apply(newId(), (p) => addValue(p, newId())),
+      remove: (id) => {
+        get().running[id]?.controller.abort();
+        apply(newId(), (p) => removeValue(p, id, newId()));
+        set({ announcement: 'Value removed. Undo brings it back.' });
+      },
+      select: (id) =>
+        set(({ history }) => ({
+          history: applyEverywhere(history, (p) => (p.values.some((v) => v.id === id) ? { ...p, selected: id } : p)),
+        })),
+      rename: (title) => apply('title', (p) => ({ ...p, title })),
+      keepBasis: (name, entries) => apply(newId(), (p) => saveBasisSet(p, newId(), name, entries)),
+      dropBasis: (id) => apply(newId(), (p) => removeBasisSet(p, id)),
+      undo: () => set(({ history }) => ({ history: undo(history), announcement: 'Undone.' })),
+      redo: () => set(({ history }) => ({ history: redo(history), announcement: 'Redone.' })),
+      searchStarted: (id, controller) =>
+        set(({ running, problems }) => ({
+          running: { ...running, [id]: { progress: null, controller } },
+          problems: without(problems, id),
+          announcement: 'Search started.',
+        })),
+      searchMoved: (id, progress) =>
+        set(({ running }) => {
+          const current = running[id];
+          return current === undefined ? {} : { running: { ...running, [id]: { ...current, progress } } };
+        }),
+      searchEnded: (id, result) =>
+        set(({ history, running, problems }) => {
+          const rest = { running: without(running, id) };
+          if ('cancelled' in result) return { ...rest, announcement: 'Search cancelled.' };
+          if ('problem' in result)
+            return { ...rest, problems: { ...problems, [id]: result.problem }, announcement: result.problem };
+          return {
+            ...rest,
+            history: applyEverywhere(history, (p) => addRecord(p, id, result.record)),
+            announcement: spoken(result.record),
+          };
+        }),
+      setSave: (save) => set({ save }),
+      announce: (announcement) => set({ announcement }),
+    };
+  });
+}
+
+/** The outcome in one spoken sentence. */
+function spoken(record: SearchRecord): string {
+  if (record.outcome === 'relation') return `Search finished. Verdict: ${record.verdict}.`;
+  if (record.outcome === 'excluded') return `Search finished. Excluded below ${record.normBound}.`;
+  return `Search finished. ${record.diagnosis[0] ?? record.outcome}`;
+}

@@ -5,7 +5,7 @@
  * Σ_k 4^−ek·E_k with E_k the sum of the principal k × k minors of YᵀY. All E_k ≥ 0, so nothing cancels. A transform that is not
  * unimodular multiplies the determinant by an integer square, and drift of the doubles shows as well.
  */
-import { log10Of } from '../../number/integer.ts';
+import { bitLength, log10Of } from '../../number/integer.ts';
 
 export interface Checksum {
   /** ½·log2 of the determinant of the Gram matrix at weight 2^−e: what Σ log2 l_ii must be. */
@@ -13,7 +13,8 @@ export interface Checksum {
 }
 
 export function checksumOf(rows: readonly (readonly bigint[])[]): Checksum {
-  const terms = minorSums(gramOfColumns(rows)).map((value) => log10Of(value) / Math.LOG10E / Math.LN2);
+  const columns = rows[0]?.length ?? 0;
+  const terms = columns === 1 ? [log2Norm(rows)] : minorSums(gramOfColumns(rows)).map(log2Of);
   return {
     expected(e) {
       let top = 0;
@@ -27,6 +28,19 @@ export function checksumOf(rows: readonly (readonly bigint[])[]): Checksum {
       return (top + Math.log2(sum)) / 2;
     },
   };
+}
+
+/** log2 of the squared norm of a single column, from the leading 64 bits. */
+function log2Norm(rows: readonly (readonly bigint[])[]): number {
+  const top = Math.max(...rows.map((row) => bitLength(row[0] as bigint)));
+  const drop = Math.max(0, top - 64);
+  let sum = 0n;
+  for (const row of rows) sum += ((row[0] as bigint) >> BigInt(drop)) ** 2n;
+  return log2Of(sum) + 2 * drop;
+}
+
+function log2Of(value: bigint): number {
+  return log10Of(value) / Math.log10(2);
 }
 
 function gramOfColumns(rows: readonly (readonly bigint[])[]): bigint[][] {

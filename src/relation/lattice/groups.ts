@@ -20,6 +20,8 @@ export const JOIN_GAP = 20;
 /** Each pass takes some 40 bits off the quotients; sizes differ by some 10^5 bits at most. */
 const MAX_PASSES = 10_000;
 
+export const ROWS_PER_STEP = 16;
+
 export interface Cluster {
   readonly rows: ExactRow[];
   /** Bits of the largest residual in it. */
@@ -59,14 +61,15 @@ export interface Arranged {
   readonly diagonal: number[];
 }
 
-/** Size-reduces the rows exactly, each against those before it, at weight 2^−e, and factors them. */
-export function arrange(rows: readonly ExactRow[], e: number): Arranged {
+/** Size-reduces the rows exactly, each against those before it, at weight 2^−e, and factors them. Yields every few rows. */
+export function* arrange(rows: readonly ExactRow[], e: number): Generator<void, Arranged, void> {
   const n = rows[0]?.b.length ?? 0;
   const m = rows[0]?.y.length ?? 0;
   const factor = new RowFactor(rows.length, n + m);
   const done: Arranged = { rows: [], coordinates: [], exponents: [], diagonal: [] };
   for (const given of rows) {
     let row = given;
+    if (done.rows.length % ROWS_PER_STEP === ROWS_PER_STEP - 1) yield;
     for (let pass = 0; ; pass++) {
       const x = new Float64Array(n + m);
       const exponent = scaledRow(row, e, x);

@@ -8,6 +8,11 @@ const HALF = LIMB / 2;
 /** Two limbs are eleven hexadecimal digits. */
 const HEX_PER_PAIR = 11;
 
+/** Integers of up to this many limbs are put together by shifts; longer ones by way of hexadecimal text, in linear time. */
+const SHORT = 24;
+const PAIR_BITS = BigInt(2 * LIMB_BITS);
+const LONE_BITS = BigInt(LIMB_BITS);
+
 /** Limbs that hold any integer of `bits` bits, with a whole limb to spare for carries. */
 export function limbsFor(bits: number): number {
   return Math.ceil((bits + 2) / LIMB_BITS) + 1;
@@ -35,11 +40,19 @@ export function writeLimbs(value: bigint, f: Float64Array, at: number, length: n
   }
 }
 
-/** The integer in f[at … at + length); any limbs of size below 2^52. */
+/** The integer in f[at … at + length), of limbs in [−2^21, 2^21]. */
 export function readLimbs(f: Float64Array, at: number, length: number): bigint {
   let top = length;
   while (top > 0 && f[at + top - 1] === 0) top--;
   if (top === 0) return 0n;
+  if (top <= SHORT) {
+    let value = 0n;
+    for (let k = top - 1; k >= 0; k -= 2) {
+      const pair = k > 0 ? (f[at + k] as number) * LIMB + (f[at + k - 1] as number) : (f[at] as number);
+      value = (value << (k > 0 ? PAIR_BITS : LONE_BITS)) + BigInt(pair);
+    }
+    return value;
+  }
   // Each pair is written with a borrow so that it lies in 0 … 2^44 − 1; what is left over beyond the last pair is the sign's.
   let hex = '';
   let borrow = 0;

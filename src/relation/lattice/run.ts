@@ -110,7 +110,7 @@ export class LatticeSearch {
   *run(): Generator<void, SearchEnd, void> {
     const { state, input, progress } = this;
     state.e = Math.max(this.startBits, input.endBits);
-    this.regroup(this.arrivals(0), []);
+    yield* this.regroup(this.arrivals(0), []);
     const immediate = this.testExact();
     if (immediate !== undefined) return immediate;
     while (state.e > input.endBits) {
@@ -119,7 +119,7 @@ export class LatticeSearch {
       const b = bitsToFeed(state, this.shape, largest, this.range, input.endBits);
       if (this.arrivalsDue(b)) {
         yield* this.flushRows(state.e);
-        this.regroup(this.arrivals(b), this.exactRows());
+        yield* this.regroup(this.arrivals(b), this.exactRows());
         continue;
       }
       let look = this.windowShort(b);
@@ -166,17 +166,17 @@ export class LatticeSearch {
   }
 
   /** Makes arrivals and rows active, except for those that a gap parks. */
-  private regroup(arrivals: readonly ExactRow[], rows: readonly ExactRow[]): void {
+  private *regroup(arrivals: readonly ExactRow[], rows: readonly ExactRow[]): Generator<void, void, void> {
     const { state } = this;
     if (arrivals.length + rows.length === 0) return;
-    const arranged = arrange([...arrivals, ...rows], state.e);
+    const arranged = yield* arrange([...arrivals, ...rows], state.e);
     const count = parkFrom(arranged.diagonal);
     if (count < arranged.rows.length) {
       const least = Math.min(...arranged.diagonal.slice(count));
       this.parked.push({ rows: arranged.rows.slice(count), least });
     }
     const active = arranged.rows.slice(0, count);
-    loadRows(state, active);
+    yield* loadRows(state, active);
     state.scale = Math.floor(Math.min(...arranged.diagonal.slice(0, count)));
     loadFactor(state, arranged, count);
     this.checksum = this.checksumFor(active);
@@ -198,7 +198,7 @@ export class LatticeSearch {
       if (last === undefined || this.shape.largest + this.state.scale < last.least - JOIN_GAP) return;
       yield* this.flushRows(this.state.e);
       this.parked.pop();
-      this.regroup([], [...this.exactRows(), ...last.rows]);
+      yield* this.regroup([], [...this.exactRows(), ...last.rows]);
     }
   }
 
@@ -337,7 +337,7 @@ export class LatticeSearch {
     const { state, progress } = this;
     if (this.pending.length > 0) {
       yield* this.flushRows(state.e);
-      this.regroup(this.arrivals(Number.POSITIVE_INFINITY), this.exactRows());
+      yield* this.regroup(this.arrivals(Number.POSITIVE_INFINITY), this.exactRows());
     }
     let sum = Number.NaN;
     for (let k = 0; k < MAX_FINAL_SWEEPS; k++) {

@@ -111,8 +111,8 @@ export function runAt(table: LimbTable, row: number, group: number): number {
   return table.current + row * table.rowStride + group * table.groupStride;
 }
 
-/** Makes `rows` the active rows: exact tables written, transform reset, window loaded. L is not touched. */
-export function loadRows(state: LatticeState, rows: readonly ExactRow[]): void {
+/** Makes `rows` the active rows: exact tables written, transform reset, window loaded. L is not touched. Yields every few rows. */
+export function* loadRows(state: LatticeState, rows: readonly ExactRow[]): Generator<void, void, void> {
   const { kernels, n, m } = state;
   state.active = rows.length;
   let bits = 1;
@@ -120,14 +120,15 @@ export function loadRows(state: LatticeState, rows: readonly ExactRow[]): void {
   if (limbsFor(bits) > state.basis.length) state.basis = newTable(kernels, n, n, limbsFor(bits) + 4);
   const f = kernels.view();
   let top = 1;
-  rows.forEach((row, i) => {
+  for (const [i, row] of rows.entries()) {
+    if (i % 16 === 15) yield;
     for (let j = 0; j < m; j++) {
       const y = row.y[j] as bigint;
       top = Math.max(top, bitLength(y));
       writeLimbs(y, f, runAt(state.residuals, i, j), state.residuals.length);
     }
     for (let j = 0; j < n; j++) writeLimbs(row.b[j] as bigint, f, runAt(state.basis, i, j), state.basis.length);
-  });
+  }
   state.residuals.used = Math.min(state.residuals.length, limbsFor(top));
   state.basis.used = limbsFor(bits);
   state.earlier = undefined;

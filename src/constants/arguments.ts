@@ -79,8 +79,11 @@ export function elementaryValue(term: Term, bits: number): Value {
   }
 }
 
-/** Turns "cannot be told" into a sentence for whoever typed the expression. */
+/** Turns "cannot be told" and "too large" into sentences for whoever typed the expression. */
 export function undecided(error: unknown): unknown {
+  if (error instanceof RangeError && /^(exp|sinCos): /.test(error.message)) {
+    return new InputError('too-large', 'This expression has an exponential or an angle that is too large.');
+  }
   if (!(error instanceof PrecisionError)) return error;
   return new InputError(
     'undecided',

@@ -127,10 +127,8 @@ function checkDomain(term: CallTerm, argument: Term): void {
   try {
     elementaryValue({ ...term, groups: [[argument]] }, 64);
   } catch (error) {
-    if (undecided(error) === error && !(error instanceof RangeError)) {
-      if (!(error instanceof InputError) || error.code !== 'undecided') throw error;
-    }
-    if (error instanceof RangeError) throw new InputError('too-large', `${term.name} of this argument is too large.`);
+    const known = undecided(error);
+    if (!(known instanceof InputError) || known.code !== 'undecided') throw known;
     throw new InputError('pole', `${term.name}(${termText(argument)}) is infinite or cannot be told from infinite.`);
   }
 }

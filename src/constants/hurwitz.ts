@@ -115,7 +115,7 @@ function hurwitzValues(list: readonly HurwitzArgs[], s: number, bits: number, co
     addHurwitz(form, s, p, q, { p: 1n, q: 1n });
     return form;
   });
-  const largest = list.reduce((m, { q }) => (q > m ? q : m), 1n);
+  const largest = list.reduce((m, { q }) => Math.max(q, m), 1n);
   const guard = 16 + Math.ceil(s * (Math.log2(Number(largest)) + 1));
   return allToAccuracy(bits, guard, (work) => {
     const sums = sumsOf(forms, s, work, context);

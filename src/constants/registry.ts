@@ -2,7 +2,9 @@
 import { InputError } from '../number/errors.ts';
 import { circularFamilies } from './circular.ts';
 import { elementaryFamilies } from './elementary.ts';
+import { ellipticFamilies } from './elliptic.ts';
 import type { Family } from './family.ts';
+import { gammaFamily } from './gamma.ts';
 import { hurwitzFamilies } from './hurwitz.ts';
 import { characterFamilies } from './l-values.ts';
 import { polylogFamily } from './polylog.ts';
@@ -26,6 +28,8 @@ export const families: readonly AnyFamily[] = [
   ...hurwitzFamilies,
   polylogFamily,
   ...circularFamilies,
+  gammaFamily,
+  ...ellipticFamilies,
   ...sumFamilies,
 ];
 

@@ -49,7 +49,9 @@ export function argument(x: Value, bits: number): Ball {
 /** The principal logarithm; a real negative number gets imaginary part π. */
 export function log(x: Value, bits: number): Value {
   if (!isComplex(x)) {
-    if (knownSign(x) > 0) return logReal(x, bits);
+    const s = knownSign(x);
+    if (s === 0) throw new PrecisionError('log: the argument is zero');
+    if (s > 0) return logReal(x, bits);
     return { re: logReal(real.negate(x), bits), im: piBall(bits) };
   }
   if (isExactZero(x.im)) return log(x.re, bits);

@@ -107,7 +107,7 @@ const rememberedLogs = remembered(computeLogs);
 
 /** log p for p = 2, 3, 5 or 7, with `bits` fraction bits and a radius of at most two units. Throws RangeError for another p. */
 export function smoothLog(prime: bigint, bits: number): Ball {
-  const index = SMOOTH_PRIMES.findIndex((p) => p === prime);
+  const index = SMOOTH_PRIMES.indexOf(prime);
   const log = rememberedLogs(bits)[index];
   if (log === undefined) throw new RangeError(`smoothLog: expected 2, 3, 5 or 7, got ${prime}`);
   return withBits(log, bits);

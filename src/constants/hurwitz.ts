@@ -115,8 +115,8 @@ function hurwitzValues(list: readonly HurwitzArgs[], s: number, bits: number, co
     addHurwitz(form, s, p, q, { p: 1n, q: 1n });
     return form;
   });
-  const largest = list.reduce((m, { q }) => Math.max(q, m), 1n);
-  const guard = 16 + Math.ceil(s * (Math.log2(Number(largest)) + 1));
+  const largest = Math.max(...list.map(({ q }) => Number(q)));
+  const guard = 16 + Math.ceil(s * (Math.log2(largest) + 1));
   return allToAccuracy(bits, guard, (work) => {
     const sums = sumsOf(forms, s, work, context);
     const usesZeta = forms.some((f) => f.zeta.p !== 0n);

@@ -80,7 +80,7 @@ export function acothFixed(x: bigint, work: number): bigint {
 }
 
 /** The primes whose logarithms come together. */
-export const SMOOTH_PRIMES = [2n, 3n, 5n, 7n] as const;
+export const SMOOTH_PRIMES: readonly bigint[] = [2n, 3n, 5n, 7n];
 const ACOTH_ARGUMENTS = [251n, 449n, 4801n, 8749n] as const;
 /**
  * log of 2, 3, 5, 7 as integer combinations of 2 acoth of 251, 449, 4801, 8749. They invert

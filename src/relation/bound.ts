@@ -19,7 +19,7 @@
  * integer det(B)², and det(Q·Qᵀ) pins the left to less than a factor 4.
  */
 import { bitLength, log10Of } from '../number/integer.ts';
-import type { Prepared } from './prepare.ts';
+import { type Prepared, residualsOf } from './prepare.ts';
 
 export interface NormBound {
   /** log10 of the proven bound; never below 0, which holds for any integer vector. */
@@ -38,12 +38,14 @@ const UNPROVED: NormBound = { normBoundLog10: 0, proved: false, defect: Number.P
 /**
  * The bound that `basis` proves for the numbers `prepared`. `basis` is a unimodular matrix, rows in the order of
  * orthogonalisation (shortest first is best); `weightsLog2` are the integers log2 ρⱼ at which it is reduced.
- * Any basis and weights give a true bound; good ones give a good bound. Throws RangeError for a basis of the wrong shape.
+ * Any basis and weights give a true bound; good ones give a good bound. `residuals`, where the caller has them, must be the exact
+ * products of the rows with the integers. Throws RangeError for a basis of the wrong shape.
  */
 export function certifyNormBound(
   prepared: Prepared,
   basis: readonly (readonly bigint[])[],
   weightsLog2: readonly number[],
+  residuals: readonly (readonly bigint[])[] = basis.map((row) => residualsOf(prepared, row)),
 ): NormBound {
   const n = prepared.integers.length;
   const m = prepared.columns.length;
@@ -54,7 +56,7 @@ export function certifyNormBound(
     throw new RangeError(`certifyNormBound: expected ${m} integer weights`);
   }
   const width = n + m;
-  const { rows, exponents } = exactRows(prepared, basis, weightsLog2);
+  const { rows, exponents } = exactRows(basis, residuals, weightsLog2);
   const v = inverseFactor(rows.slice(), n, width);
   if (v === undefined) return UNPROVED;
   const defect = orthogonalityDefect(v, rows, n, width);
@@ -79,8 +81,8 @@ export function certifyNormBound(
  * Each double is within 2u relative of the exact entry, or within 2^−1000.
  */
 function exactRows(
-  prepared: Prepared,
   basis: readonly (readonly bigint[])[],
+  residuals: readonly (readonly bigint[])[],
   weightsLog2: readonly number[],
 ): { rows: Float64Array; exponents: number[] } {
   const n = basis.length;
@@ -88,19 +90,16 @@ function exactRows(
   const width = n + m;
   const rows = new Float64Array(n * width);
   const exponents = basis.map((row, i) => {
-    const residuals = weightsLog2.map((_, j) =>
-      row.reduce((sum, c, k) => (c === 0n ? sum : sum + c * (prepared.integers[k]?.[j] as bigint)), 0n),
-    );
     let exponent = Number.NEGATIVE_INFINITY;
     for (const c of row) if (c !== 0n) exponent = Math.max(exponent, bitLength(c));
-    residuals.forEach((y, j) => {
+    (residuals[i] as readonly bigint[]).forEach((y, j) => {
       if (y !== 0n) exponent = Math.max(exponent, bitLength(y) - (weightsLog2[j] as number));
     });
     if (!Number.isFinite(exponent)) return 0;
     row.forEach((c, k) => {
       rows[i * width + k] = roundedQuotient(c, exponent);
     });
-    residuals.forEach((y, j) => {
+    (residuals[i] as readonly bigint[]).forEach((y, j) => {
       rows[i * width + n + j] = roundedQuotient(y, exponent + (weightsLog2[j] as number));
     });
     return exponent;

@@ -1,7 +1,7 @@
 /** The lattice method as the engine sees it. */
 import { startLattice } from './lattice/index.ts';
-import { type Basis, type MethodEnd, type MethodOptions, residualsOf, type SearchMethod } from './methods.ts';
-import type { Prepared } from './prepare.ts';
+import type { Basis, MethodEnd, MethodOptions, SearchMethod } from './methods.ts';
+import { type Prepared, residualsOf } from './prepare.ts';
 import { weightRange } from './pslq/search.ts';
 import { withinErrors } from './significance.ts';
 
@@ -23,7 +23,9 @@ export const latticeMethod: SearchMethod = function* (prepared, options, progres
       result = run.step();
     }
     progress.iterations = result.iterations;
+    yield;
     const basis = result.basis();
+    yield;
     const weights = lifts.map((lift) => (result?.weightBits ?? 0) - lift);
     if (result.kind === 'bounded' && !last && !options.bounded(basis, weights)) continue;
     // Several relations that become visible together leave no gap for the search to notice: look at the basis as well.

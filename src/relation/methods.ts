@@ -1,5 +1,5 @@
 /** What a search method is to the engine, and PSLQ as one. */
-import type { Prepared } from './prepare.ts';
+import { type Prepared, residualsOf } from './prepare.ts';
 import { pslq } from './pslq/search.ts';
 import { initialState } from './pslq/state.ts';
 import { log10Norm, withinErrors } from './significance.ts';
@@ -56,21 +56,19 @@ export const pslqMethod: SearchMethod = function* (prepared, options, progress) 
 
 /**
  * log10 of the smallest residual among the rows of `basis` that do not vanish within the errors over that of the relation
- * (at least one unit); all columns together. 0 when every row vanishes.
+ * (at least one unit); all columns together. 0 when every row vanishes. `residuals` are those of the basis.
  */
-export function confidence(prepared: Prepared, basis: Basis, coefficients: readonly bigint[]): number {
+export function confidence(
+  prepared: Prepared,
+  basis: Basis,
+  residuals: readonly (readonly bigint[])[],
+  coefficients: readonly bigint[],
+): number {
   let least = Number.POSITIVE_INFINITY;
-  for (const row of basis) {
-    const residuals = residualsOf(prepared, row);
-    if (!withinErrors(prepared, row, residuals)) least = Math.min(least, log10Norm(residuals));
-  }
+  basis.forEach((row, i) => {
+    const y = residuals[i] as readonly bigint[];
+    if (!withinErrors(prepared, row, y)) least = Math.min(least, log10Norm(y));
+  });
   if (!Number.isFinite(least)) return 0;
   return Math.max(0, least - Math.max(0, log10Norm(residualsOf(prepared, coefficients))));
-}
-
-/** Σ rowₖ·xₖⱼ per column, in units. */
-export function residualsOf(prepared: Prepared, row: readonly bigint[]): bigint[] {
-  return prepared.columns.map((_, j) =>
-    row.reduce((sum, c, k) => (c === 0n ? sum : sum + c * (prepared.integers[k]?.[j] as bigint)), 0n),
-  );
 }

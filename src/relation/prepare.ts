@@ -99,6 +99,13 @@ export function combination(rows: readonly (readonly Ball[])[], coefficients: re
   return { mid, rad, bits };
 }
 
+/** Σ rowₖ·xₖⱼ per column, in units; exact. */
+export function residualsOf(prepared: Prepared, row: readonly bigint[]): bigint[] {
+  return prepared.columns.map((_, j) =>
+    row.reduce((sum, c, k) => (c === 0n ? sum : sum + c * (prepared.integers[k]?.[j] as bigint)), 0n),
+  );
+}
+
 function checkShape(rows: readonly (readonly Ball[])[]): void {
   if (rows.length < 2) {
     throw new InputError('too-few-numbers', `A relation needs at least two numbers, got ${rows.length}.`);

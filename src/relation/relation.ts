@@ -4,7 +4,7 @@ import { certifyNormBound, type NormBound } from './bound.ts';
 import type { RelationOutcome, RelationProgress, RelationRequest, RelationRun } from './contract.ts';
 import { latticeMethod } from './lattice-method.ts';
 import { confidence, type MethodEnd, type MethodOptions, type MethodProgress, pslqMethod } from './methods.ts';
-import { mayVanish, type Prepared, prepare } from './prepare.ts';
+import { mayVanish, type Prepared, prepare, residualsOf } from './prepare.ts';
 import { digitsNeeded, primitive, SURPLUS_DIGITS, surplusDigits } from './significance.ts';
 
 /** Work between two looks at the clock is a few milliseconds; a step ends at the first look past this many. */
@@ -58,33 +58,36 @@ function* search(
     return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10: 0, iterations: 0 };
   }
   const maxNormLog10 = request.maxNormLog10 ?? Number.POSITIVE_INFINITY;
-  const certify = (basis: readonly (readonly bigint[])[], weights: readonly number[]): NormBound =>
-    certifyNormBound(prepared, basis, weights);
   const options: MethodOptions = {
     accept: (c) => surplusDigits(prepared, c) >= SURPLUS_DIGITS && mayVanish(prepared.rows, c),
     maxNormLog10,
-    bounded: (basis, weights) => certify(basis, weights).normBoundLog10 >= maxNormLog10,
+    bounded: (basis, weights) => certifyNormBound(prepared, basis, weights).normBoundLog10 >= maxNormLog10,
   };
   const method = request.method === 'lattice' ? latticeMethod : pslqMethod;
   const end = yield* method(prepared, options, progress);
   yield;
-  const bound = certify(end.basis, end.weights);
+  const residuals: bigint[][] = [];
+  for (const row of end.basis) {
+    residuals.push(residualsOf(prepared, row));
+    if (residuals.length % 16 === 0) yield;
+  }
+  const bound = certifyNormBound(prepared, end.basis, end.weights, residuals);
+  yield;
   progress.normBoundLog10 = bound.normBoundLog10;
-  return outcomeOf(request, prepared, end, bound, progress.iterations);
+  const { iterations } = progress;
+  if (end.coefficients === undefined) return negative(request, prepared, end, bound, iterations);
+  const coefficients = primitive(end.coefficients);
+  const confidenceLog10 = confidence(prepared, end.basis, residuals, coefficients);
+  return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10: bound.normBoundLog10, iterations };
 }
 
-function outcomeOf(
+function negative(
   request: RelationRequest,
   prepared: Prepared,
   end: MethodEnd,
   { normBoundLog10, proved }: NormBound,
   iterations: number,
 ): RelationOutcome {
-  if (end.coefficients !== undefined) {
-    const coefficients = primitive(end.coefficients);
-    const confidenceLog10 = confidence(prepared, end.basis, coefficients);
-    return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10, iterations };
-  }
   const unstable = end.kind === 'unstable' || !proved;
   const asked =
     request.maxNormLog10 ?? (unstable ? Number.POSITIVE_INFINITY : Math.log10(prepared.integers.length) / 2);

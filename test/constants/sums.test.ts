@@ -3,7 +3,7 @@ import { sumFamilies } from '../../src/constants/sums/index.ts';
 import { type Ball, overlaps } from '../../src/number/ball.ts';
 import { toComplex } from '../../src/number/complex.ts';
 import { InputError } from '../../src/number/errors.ts';
-import { claim, decimalBall, readCall, real, referenceConstants, value } from './sums-support.ts';
+import { claim, context, decimalBall, readCall, real, referenceConstants, value } from './sums-support.ts';
 
 const BITS = 3330;
 
@@ -98,5 +98,28 @@ describe('claims and refusals', () => {
     expect(latex('MPL(2,1;r6,1)')).toBe('\\mathrm{Li}_{2,1}(e^{i\\pi/3},1)');
     expect(latex('MPL(2,1;r3^2,i)')).toBe('\\mathrm{Li}_{2,1}(e^{-2i\\pi/3},i)');
     expect(latex('binsum(2)')).toBe('\\sum_{n\\ge1}\\frac{1}{n^{2}\\binom{2n}{n}}');
+  });
+});
+
+describe('long passes', () => {
+  const texts = [
+    'zeta(5,3)',
+    'MPL(2,1;r6,1)',
+    'MPL(2,1;r8,1)',
+    'G(0,sqrt(2),-1;1)',
+    'binsum(3)',
+    'bessel(1,0,3)',
+    'Ls(4,pi/3)',
+  ];
+
+  it.each(texts)('%s hears a cancel and reports how far it is', (text) => {
+    const { family, args } = claim(text);
+    const fractions: number[] = [];
+    family.evaluate(args, 800, { ...context, onProgress: (fraction) => fractions.push(fraction) });
+    expect(fractions.length).toBeGreaterThan(2);
+    for (const fraction of fractions) expect(fraction >= 0 && fraction <= 1).toBe(true);
+    const controller = new AbortController();
+    controller.abort(new Error('stopped'));
+    expect(() => family.evaluate(args, 800, { ...context, signal: controller.signal })).toThrow('stopped');
   });
 });

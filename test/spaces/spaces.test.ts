@@ -1,4 +1,8 @@
 import { describe, expect, it } from 'vitest';
+import { evaluateMany, evaluateTerm } from '../../src/constants/evaluate.ts';
+import { parseTerm } from '../../src/expression/parse.ts';
+import { containsZero, overlaps } from '../../src/number/ball.ts';
+import { isComplex, multiply, toComplex } from '../../src/number/complex.ts';
 import { InputError } from '../../src/number/errors.ts';
 import { lyndonWords } from '../../src/spaces/lyndon.ts';
 import { spaceOf, spaces } from '../../src/spaces/registry.ts';
@@ -53,6 +57,30 @@ describe('spaces', () => {
     }
     expect([1, 2, 3, 4].map((w) => count('sixth-roots', w, 'real'))).toEqual([2, 5, 12, 30]);
     expect([1, 2, 3, 4].map((w) => count('sixth-roots', w, 'imaginary'))).toEqual([1, 3, 9, 25]);
+  });
+
+  it('every element is a typed constant that evaluates to a real number', () => {
+    for (const space of spaces) {
+      const texts = space.basis(Math.min(space.maxWeight, 4), { lower: true });
+      const generators = space.generators.map((generator) => generator.text);
+      for (const [k, value] of evaluateMany([...texts, ...generators].map(parseTerm), 80).entries()) {
+        expect(isComplex(value), `${space.key} ${[...texts, ...generators][k]}`).toBe(false);
+        expect(containsZero(toComplex(value).re)).toBe(false);
+      }
+    }
+  });
+
+  it('a factor multiplies every element', () => {
+    for (const times of ['sqrt(3)', '1/pi', '2-sqrt(3)', '-1']) {
+      const factor = evaluateTerm(parseTerm(times), 90);
+      const plain = spaceOf('polylog-half').basis(3, { lower: true });
+      const scaled = spaceOf('polylog-half').basis(3, { lower: true, times });
+      plain.forEach((text, k) => {
+        const product = multiply(evaluateTerm(parseTerm(text), 90), factor, 90);
+        const direct = evaluateTerm(parseTerm(scaled[k] as string), 90);
+        expect(overlaps(toComplex(product).re, toComplex(direct).re), scaled[k]).toBe(true);
+      });
+    }
   });
 
   it('refuses unknown spaces and weights out of range', () => {

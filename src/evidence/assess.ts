@@ -117,7 +117,8 @@ function agreementItem(agreement: number, trusted: number, wrongAt: number | nul
 
 function surplusItem(surplus: number, possible: number, credited: number): EvidenceItem {
   const speaks = surplus >= HOLDS_SURPLUS ? 'for' : surplus < TENTATIVE_SURPLUS ? 'against' : 'neutral';
-  const odds = surplus > 0 ? `by chance about once in 10^${round(surplus)} searches` : 'by chance in most searches';
+  const odds =
+    surplus > 0 ? `by chance about once in 10^${Math.floor(surplus)} searches` : 'by chance in most searches';
   return {
     key: 'surplus',
     title: 'Surplus digits',

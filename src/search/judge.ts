@@ -2,15 +2,18 @@
 import { assess } from '../evidence/assess.ts';
 import { vectorsLog10 } from '../evidence/counting.ts';
 import type { StabilityPoint } from '../evidence/evidence.ts';
-import { add, type Ball, containsZero, divide, fromInteger, subtract, timesInteger } from '../number/ball.ts';
-import { gcd, log10Of } from '../number/integer.ts';
+import { add, type Ball, divide, fromInteger, subtract, timesInteger } from '../number/ball.ts';
+import { log10Of } from '../number/integer.ts';
 import type { Method, RelationOutcome } from '../relation/contract.ts';
+import { dependentRecord, relationAmongConstants } from './dependence.ts';
 import { budgetFor, digitsNeeded } from './estimate.ts';
-import { basisValues, inColumns } from './numbers.ts';
-import { GUARD_BITS, LOG2_10, type Problem, type SearchOptions } from './problem.ts';
+import { LOG2_10, type Problem, type SearchOptions } from './problem.ts';
 import type { SearchRecord } from './record.ts';
 import { relate } from './relate.ts';
 import { emptyRecord, relationRecord } from './report.ts';
+
+const CHANCE =
+  'The best candidate does not involve the value and is not a relation among the constants either: the digits are too few for this basis.';
 
 /** The record of an outcome found at `digits` digits: evidence and verdict for a relation, the bound for a negative. */
 export async function judge(
@@ -48,7 +51,12 @@ export async function judge(
     };
   }
   const integers = outcome.coefficients;
-  if (integers[0] === 0n) return dependent(problem, integers, base, options);
+  if (integers[0] === 0n) {
+    return (await dependentRecord(problem, integers, base, options)) ?? { ...base, diagnosis: [CHANCE] };
+  }
+  const among = await relationAmongConstants(problem, options);
+  const dependent = among === null ? null : await dependentRecord(problem, among, base, options);
+  if (dependent !== null) return dependent;
   const expression = expressionValue(problem, integers);
   const stability = await repeat(problem, integers, expression, digits, options);
   const second = await otherMethod(problem, integers, digits, options);
@@ -145,47 +153,6 @@ async function otherMethod(
   if (method === 'pslq' && integers.length > 40) return null;
   const again = await relate(problem, digits, method, options, null);
   return { method, same: again.kind === 'relation' && same(again.coefficients, integers) };
-}
-
-/** A relation among the constants alone, confirmed with constants at twice the digits. */
-function dependent(
-  problem: Problem,
-  integers: readonly bigint[],
-  base: SearchRecord,
-  options: SearchOptions,
-): SearchRecord {
-  const { elements, columns } = problem;
-  const bits = 2 * Math.ceil(problem.value.written * LOG2_10) + GUARD_BITS;
-  const values = inColumns(
-    basisValues(elements, bits, { cache: options.cache, signal: options.signal }),
-    elements,
-    columns,
-  );
-  const vanishes = Array.from({ length: columns }, (_, j) =>
-    values.reduce((sum, row, k) => add(sum, timesInteger(row[j] as Ball, integers[k + 1] as bigint)), fromInteger(0n)),
-  ).every(containsZero);
-  if (!vanishes) {
-    return {
-      ...base,
-      diagnosis: [
-        'The best candidate does not involve the value and is not a relation among the constants either: the digits are too few for this basis.',
-      ],
-    };
-  }
-  const rest = integers.slice(1).reduce((g, c) => gcd(g, c), 0n);
-  const involved = elements.filter((_, k) => integers[k + 1] !== 0n).map((e) => e.text);
-  return {
-    ...base,
-    ...relationRecord(
-      elements,
-      integers.map((c) => c / (rest === 0n ? 1n : rest)),
-      undefined,
-    ),
-    outcome: 'basis-dependent',
-    diagnosis: [
-      `The constants ${involved.join(', ')} are linearly dependent: the relation holds to ${Math.floor(bits / LOG2_10)} digits without the value. Leave one of them out and search again.`,
-    ],
-  };
 }
 
 /** A norm bound as text, rounded down to two digits. */

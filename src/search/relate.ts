@@ -1,4 +1,5 @@
 /** The relation engine on a problem at some number of digits, in turns of the event loop. */
+import type { Ball } from '../number/ball.ts';
 import type { Method, RelationOutcome } from '../relation/contract.ts';
 import { startRelation } from '../relation/relation.ts';
 import { readMaxNorm } from './intake.ts';
@@ -14,16 +15,27 @@ export type Report = (
 ) => void;
 
 /** Searches with the value believed to `digits` digits. Rejects with the signal's reason when aborted. */
-export async function relate(
+export function relate(
   problem: Problem,
   digits: number,
   method: Method,
   options: SearchOptions,
   report: Report | null,
 ): Promise<RelationOutcome> {
-  const { maxNorm } = problem.request;
+  const rows = [problem.believe(digits), ...problem.constants];
+  return relateRows(rows, method, problem.request.maxNorm, options, report);
+}
+
+/** Searches among any numbers, a row each. Rejects with the signal's reason when aborted. */
+export async function relateRows(
+  rows: readonly (readonly Ball[])[],
+  method: Method,
+  maxNorm: string | undefined,
+  options: SearchOptions,
+  report: Report | null,
+): Promise<RelationOutcome> {
   const run = startRelation({
-    rows: [problem.believe(digits), ...problem.constants],
+    rows,
     method,
     ...(maxNorm === undefined ? {} : { maxNormLog10: readMaxNorm(maxNorm) }),
   });

@@ -90,6 +90,13 @@ describe('honest negatives', () => {
     expect(record.diagnosis[0]).toContain('zeta(2), pi^2');
   });
 
+  it('a dependent basis is named even when the value takes part in what is found', async () => {
+    const { value } = linear.find((p) => p.id === 'euler-sum-quadratic') as Problem;
+    const record = await runSearch({ value: value as string, basis: ['pi^4', 'zeta(4)', 'zeta(3)'] }, { cache });
+    expect(record.outcome).toBe('basis-dependent');
+    expect(record.relation.map((r) => r.coefficient)).toEqual(['1', '-90', '0']);
+  });
+
   it('a wrong tail is named and the relation still found', async () => {
     const good = (linear.find((p) => p.id === 'qed-two-loop') as Problem).value as string;
     const spoiled = `${good.slice(0, 92)}${good

@@ -8,7 +8,8 @@
 import { bitLength } from '../../number/integer.ts';
 import type { Prepared } from '../prepare.ts';
 import { withinErrors } from '../significance.ts';
-import { factorH, iterate, log2Drop, log2MaxDiagonal, newStage, reduceWide } from './iterate.ts';
+import { factorH, log2Drop, log2MaxDiagonal } from './factor.ts';
+import { iterate, newStage, reduceWide } from './iterate.ts';
 import { doubleRows, type ExactState, transformedRow } from './state.ts';
 
 export interface PslqProgress {

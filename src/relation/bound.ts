@@ -19,6 +19,7 @@
  * integer det(B)², and det(Q·Qᵀ) pins the left to less than a factor 4.
  */
 import { bitLength, log10Of } from '../number/integer.ts';
+import { columnGram, log10Determinant } from './gram.ts';
 import { type Prepared, residualsOf } from './prepare.ts';
 
 export interface NormBound {
@@ -206,28 +207,12 @@ function errorShare(prepared: Prepared, weightsLog2: readonly number[]): number 
   return share * ROUND_UP;
 }
 
-/** log2 det(I + ρ⁻¹·x̂ᵀ·x̂·ρ⁻¹) = log2 det(ρ² + x̂ᵀx̂) − 2·Σ log2 ρⱼ, by fraction-free elimination (Bareiss 1968) on exact integers. */
+/** log2 det(I + ρ⁻¹·x̂ᵀ·x̂·ρ⁻¹) = log2 det(ρ² + x̂ᵀx̂) − 2·Σ log2 ρⱼ, on exact integers (lifted where some ρ is below one unit). */
 function log2GramDeterminant(prepared: Prepared, weightsLog2: readonly number[]): number {
-  const m = weightsLog2.length;
   const lift = BigInt(2 * Math.max(0, ...weightsLog2.map((w) => -w)));
-  const gram = weightsLog2.map((w, i) =>
-    weightsLog2.map((_, j) => {
-      const dot = prepared.integers.reduce((sum, x) => sum + (x[i] as bigint) * (x[j] as bigint), 0n) << lift;
-      return i === j ? dot + (1n << (lift + BigInt(2 * w))) : dot;
-    }),
+  const matrix = columnGram(prepared).map((row, j) =>
+    row.map((dot, k) => (dot << lift) + (j === k ? 1n << (lift + BigInt(2 * (weightsLog2[j] as number))) : 0n)),
   );
-  let previous = 1n;
-  for (let k = 0; k + 1 < m; k++) {
-    const pivot = gram[k]?.[k] as bigint;
-    for (let i = k + 1; i < m; i++) {
-      for (let j = k + 1; j < m; j++) {
-        const row = gram[i] as bigint[];
-        row[j] = ((row[j] as bigint) * pivot - (row[k] as bigint) * (gram[k]?.[j] as bigint)) / previous;
-      }
-    }
-    previous = pivot;
-  }
-  const determinant = gram[m - 1]?.[m - 1] as bigint;
-  const log2 = log10Of(determinant) / Math.log10(2);
-  return log2 - Number(lift) * m - 2 * weightsLog2.reduce((sum, w) => sum + w, 0);
+  const log2 = log10Determinant(matrix) / Math.log10(2);
+  return log2 - Number(lift) * matrix.length - 2 * weightsLog2.reduce((sum, w) => sum + w, 0);
 }

@@ -1,5 +1,6 @@
 /** Could this relation be chance? Counting arguments shared by both methods. */
 import { absolute, log10Of } from '../number/integer.ts';
+import { columnGram, log10Determinant } from './gram.ts';
 import type { Prepared } from './prepare.ts';
 
 /**
@@ -18,29 +19,28 @@ export function log10BallVolume(n: number): number {
 /**
  * −log10 of the expected number of integer vectors that are as short as c and vanish to the accuracy of the numbers by
  * chance. Vectors of norm at most N are counted by the volume of a ball of radius² N² + n/12 (each integer point
- * carries its unit cube); the sums c·x of column j are taken as normal with variance N²|x|²/(n + 2).
+ * carries its unit cube); their sums over the columns are taken as normal with covariance N²·x̂ᵀx̂/(n + 2), blurred by the errors E,
+ * so that columns which say the same thing (real and imaginary part of one phase times real numbers, say) count once.
  * A heuristic, good to about a digit; never part of a proof. Infinity when the numbers that take part are exact: then
  * there is no chance about it.
  */
 export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[]): number {
   const n = coefficients.length;
-  const normLog10 = log10Norm(coefficients);
+  const square = coefficients.reduce((sum, c) => sum + c * c, 0n);
+  const normLog10 = log10Of(square) / 2;
   const widened = normLog10 > 8 ? normLog10 : Math.log10(10 ** (2 * normLog10) + n / 12) / 2;
-  let log = log10BallVolume(n) + n * widened;
-  let exact = true;
-  prepared.columns.forEach((_, j) => {
-    let error = 0n;
-    let size = 0n;
-    coefficients.forEach((c, i) => {
-      error += absolute(c) * (prepared.errors[i]?.[j] as bigint);
-      const x = prepared.integers[i]?.[j] as bigint;
-      size += x * x;
-    });
-    const spread = normLog10 + log10Of(size) / 2 - Math.log10(n + 2) / 2;
-    if (error > 0n) exact = false;
-    log += Math.min(0, log10Of(error + 1n) + Math.log10(2) - spread - Math.log10(2 * Math.PI) / 2);
-  });
-  return exact ? Number.POSITIVE_INFINITY : -log;
+  const vectors = log10BallVolume(n) + n * widened;
+  const errors = prepared.columns.map((_, j) =>
+    coefficients.reduce((sum, c, i) => sum + absolute(c) * (prepared.errors[i]?.[j] as bigint), 0n),
+  );
+  if (errors.every((e) => e === 0n)) return Number.POSITIVE_INFINITY;
+  // Probability of |c·x̂ⱼ| ≤ Eⱼ for all j: Π 2Eⱼ over √det(2π·(covariance + E²)), times n + 2 to stay in integers.
+  const blurred = columnGram(prepared).map((row, j) =>
+    row.map((dot, k) => square * dot + (j === k ? BigInt(n + 2) * ((errors[j] as bigint) + 1n) ** 2n : 0n)),
+  );
+  let chance = -(log10Determinant(blurred) - prepared.columns.length * Math.log10(n + 2)) / 2;
+  for (const error of errors) chance += log10Of(error + 1n) + Math.log10(2 / Math.sqrt(2 * Math.PI));
+  return -vectors - Math.min(0, chance);
 }
 
 /** Whether residuals of the given coefficients are all within what the errors of the numbers allow. */

@@ -97,6 +97,18 @@ describe.each(METHODS)('random numbers give a bound near what their digits are w
     expect(outcome.normBoundLog10).toBeGreaterThan(worth - n * 0.02 - 0.8);
   });
 
+  it('columns that repeat each other are not twice the evidence', () => {
+    const random = randomFrom('one phase');
+    for (let k = 0; k < 20; k++) {
+      // Real numbers times 3 + 4i, to 40 digits: 40 digits of information, not 80.
+      const rows = randomNumbers(random, 6, 133).map(({ mid }) =>
+        [3n, 4n].map((f) => ({ mid: f * mid, rad: f, bits: 133 })),
+      );
+      const outcome = run({ rows, method });
+      expect(outcome.kind).toBe('excluded');
+    }
+  });
+
   it('and a limit within reach ends the search early', () => {
     const rows = randomNumbers(randomFrom('early'), 10, 600).map((x) => [x]);
     const outcome = run({ rows, method, maxNormLog10: 6 });

@@ -48,8 +48,16 @@ function powerText(base: string, exponent: number): string {
   return exponent === 1 ? base : `${base}^${exponent}`;
 }
 
-/** A space from its description and generators. */
+/** A space from its description and generators: its elements are their products. */
 export function makeSpace(parts: Omit<Space, 'basis' | 'hasImaginary'>): Space {
+  return spaceOfElements(parts, (weight) => productsOf(parts.generators, weight));
+}
+
+/** A space whose elements of each weight are given. */
+export function spaceOfElements(
+  parts: Omit<Space, 'basis' | 'hasImaginary'>,
+  elements: (weight: number) => readonly Pick<Product, 'text' | 'parity'>[],
+): Space {
   const hasImaginary = parts.generators.some((generator) => generator.parity === 'imaginary');
   const basis = (weight: number, options: SpaceOptions = {}): readonly string[] => {
     if (!Number.isInteger(weight) || weight < 0 || weight > parts.maxWeight) {
@@ -58,9 +66,9 @@ export function makeSpace(parts: Omit<Space, 'basis' | 'hasImaginary'>): Space {
     const { lower = false, parity, times } = options;
     const weights = lower ? Array.from({ length: weight + 1 }, (_, w) => w) : [weight];
     return weights
-      .flatMap((w) => productsOf(parts.generators, w))
-      .filter((product) => !hasImaginary || parity === undefined || product.parity === parity)
-      .map((product) => withFactor(product.text, times));
+      .flatMap(elements)
+      .filter((element) => !hasImaginary || parity === undefined || element.parity === parity)
+      .map((element) => withFactor(element.text, times));
   };
   return { ...parts, hasImaginary, basis };
 }

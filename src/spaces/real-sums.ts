@@ -1,5 +1,5 @@
 /** The spaces of multiple zeta values and of alternating sums: real elements only. */
-import { fibonacci, makeSpace } from './products.ts';
+import { fibonacci, makeSpace, spaceOfElements } from './products.ts';
 import type { Generator, Space } from './space.ts';
 
 const real = (text: string, weight: number): Generator => ({ text, weight, parity: 'real' });
@@ -36,6 +36,31 @@ export const multipleZetaSpace: Space = makeSpace({
     real('zeta(6,4,1,1)', 12),
   ],
 });
+
+/** The index lists of 2s and 3s with this sum, lexicographically. */
+export function hoffmanIndices(weight: number): readonly (readonly number[])[] {
+  if (weight === 0) return [[]];
+  return [2, 3].filter((s) => s <= weight).flatMap((s) => hoffmanIndices(weight - s).map((rest) => [s, ...rest]));
+}
+
+export const hoffmanSpace: Space = spaceOfElements(
+  {
+    key: 'mzv-hoffman',
+    title: 'Multiple zeta values, indices 2 and 3',
+    alphabet: '0, 1',
+    maxWeight: 12,
+    dimension: zagierDimension,
+    dimensionFormula: 'd_w = d_{w-2} + d_{w-3},\\quad d_0 = d_2 = 1,\\ d_1 = 0',
+    status: 'spanning proven, independence conjectured',
+    source: 'Hoffman, J. Algebra 194 (1997) 477; spanning: Brown, Ann. of Math. 175 (2012) 949.',
+    generators: [],
+  },
+  (weight) =>
+    hoffmanIndices(weight).map((indices) => ({
+      text: indices.length === 0 ? '1' : `zeta(${indices.join(',')})`,
+      parity: 'real',
+    })),
+);
 
 const alternatingGenerators: readonly Generator[] = [
   piSquared,

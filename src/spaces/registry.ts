@@ -1,12 +1,13 @@
 /** All spaces, and how to find one. */
 import { InputError } from '../number/errors.ts';
-import { alternatingSpace, multipleZetaSpace, polylogHalfSpace } from './real-sums.ts';
+import { alternatingSpace, hoffmanSpace, multipleZetaSpace, polylogHalfSpace } from './real-sums.ts';
 import { fourthRootSpace, fullSixthRootSpace, unramifiedSixthRootSpace } from './root-sums.ts';
 import type { Space } from './space.ts';
 
 export const spaces: readonly Space[] = [
   polylogHalfSpace,
   multipleZetaSpace,
+  hoffmanSpace,
   alternatingSpace,
   fourthRootSpace,
   unramifiedSixthRootSpace,

@@ -34,7 +34,7 @@ export interface Space {
   readonly dimensionFormula: string;
   readonly status: 'proven' | 'conjectured' | 'spanning proven, independence conjectured';
   readonly source: string;
-  /** By weight, then as in the literature. */
+  /** By weight, then as in the literature; empty for a space whose elements are not products of generators. */
   readonly generators: readonly Generator[];
   /** Whether it has elements of both parities. */
   readonly hasImaginary: boolean;

@@ -11,9 +11,10 @@ import { REAL_STEP, realTails, tailsSize } from '../../src/constants/sums/double
 import { planWords } from '../../src/constants/sums/plan.ts';
 import { rootSymmetry } from '../../src/constants/sums/words.ts';
 import { bitLength, roundShift } from '../../src/number/integer.ts';
+import { productsOf } from '../../src/spaces/products.ts';
 import { alternatingSpace, multipleZetaSpace } from '../../src/spaces/real-sums.ts';
 import type { Combination } from '../../src/spaces/reduction/combination.ts';
-import { coordinates, weightBasis } from '../../src/spaces/reduction/coordinates.ts';
+import { coordinates, imagedProducts, weightBasis } from '../../src/spaces/reduction/coordinates.ts';
 import { Decomposer, primitiveWord } from '../../src/spaces/reduction/decompose.ts';
 import { type Fraction, fraction, fractionText, ONE, ZERO } from '../../src/spaces/reduction/fraction.ts';
 import { convergentWords, generatorWords, passWord } from '../../src/spaces/reduction/words.ts';
@@ -103,8 +104,8 @@ function run(space: Space, least: 1 | 3, letters: readonly string[], maxWeight: 
       generatorValues.set(generator.text, value);
       images.set(generator.text, known);
     }
-    const basis = weightBasis(weight, least, space.generators, imageOf);
-    const productValues = basis.products.map(({ powers }) =>
+    const basis = weightBasis(weight, least, imagedProducts(weight, space.generators, imageOf));
+    const productValues = productsOf(space.generators, weight).map(({ powers }) =>
       powers.reduce((x, { generator, count }) => {
         let result = x;
         for (let k = 0; k < count; k++)
@@ -136,7 +137,7 @@ function run(space: Space, least: 1 | 3, letters: readonly string[], maxWeight: 
     lines.push(line);
     const seconds = ((performance.now() - began) / 1000).toFixed(1);
     console.log(
-      `${space.key} weight ${weight}: ${words.length} words, dimension ${basis.products.length}, coefficients to ${Math.ceil(worst * 0.30103)} digits, checked at ${CHECK_DIGITS} digits, ${seconds} s`,
+      `${space.key} weight ${weight}: ${words.length} words, dimension ${basis.elements.length}, coefficients to ${Math.ceil(worst * 0.30103)} digits, checked at ${CHECK_DIGITS} digits, ${seconds} s`,
     );
   }
   store(file, lines);

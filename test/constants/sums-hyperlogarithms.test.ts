@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { Letters } from '../../src/constants/sums/general-tails.ts';
+import type { Letters } from '../../src/constants/sums/general-size.ts';
 import { evaluateWordsOnPath } from '../../src/constants/sums/path.ts';
 import { contains, fromInteger, fromRational, overInteger, overlaps } from '../../src/number/ball.ts';
 import { add, isComplex, multiply, subtract, toComplex, type Value } from '../../src/number/complex.ts';

@@ -77,6 +77,22 @@ describe('reductions', () => {
     expect(reduced(mzv, cancels)).toEqual({});
   });
 
+  it('into the values with indices 2 and 3', () => {
+    const hoffman = makeReducer('mzv-hoffman');
+    expect(reduced(hoffman, zeta(2, 3, 2))).toEqual({ 'zeta(2,3,2)': '1' });
+    expect(reduced(hoffman, zeta(2, 1))).toEqual({ 'zeta(3)': '1' });
+    // There and back must be the identity.
+    const terms = hoffman.reduce(zeta(5, 3, 3)) ?? [];
+    const back: Term = {
+      kind: 'sum',
+      terms: terms.map(({ element, coefficient }) => ({
+        kind: 'product',
+        factors: [rational(coefficient.p, coefficient.q), zeta(...element.slice(5, -1).split(',').map(Number))],
+      })),
+    };
+    expect(reduced(mzv, back)).toEqual({ 'zeta(5,3,3)': '1' });
+  });
+
   it('says null outside, and refuses spaces without reductions', () => {
     expect(mzv.reduce(zeta(-3, 1))).toBe(null);
     expect(mzv.reduce(zeta(7, 6))).toBe(null);

@@ -8,7 +8,7 @@ import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext } from '../family.ts';
 import { call, isRational, type Term } from '../term.ts';
 import { termText } from '../term-text.ts';
-import type { Letters, Rational } from './general-tails.ts';
+import type { Letters, Rational } from './general-size.ts';
 import { evaluateWordsOnPath } from './path.ts';
 import { invertPolar, multiplyPolar, type Polar, polarOf } from './polar.ts';
 import { evaluateRootWords, ringOf } from './root-words.ts';

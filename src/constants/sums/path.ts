@@ -20,7 +20,8 @@ import {
 } from '../../number/complex.ts';
 import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext } from '../family.ts';
-import { generalAnswers, type Letters, log2Growth, type Rational, toNumber } from './general-tails.ts';
+import { type Letters, log2Growth, type Rational, toNumber } from './general-size.ts';
+import { generalAnswers } from './general-tails.ts';
 import { planWords } from './plan.ts';
 import { codeOf, letterOf, type Word } from './words.ts';
 

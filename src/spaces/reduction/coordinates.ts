@@ -1,15 +1,22 @@
-/** Coordinates of f-alphabet images in the products of a space's generators, weight by weight. */
-import { type Product, productsOf } from '../products.ts';
+/** Coordinates of f-alphabet images in the elements of a space, weight by weight. */
+import { productsOf } from '../products.ts';
 import type { Generator } from '../space.ts';
 import { accumulateAll, type Combination, product } from './combination.ts';
 import { type Decomposer, fProduct, fWords } from './decompose.ts';
 import { type Fraction, inverse, ONE, opposite, plus, times, ZERO } from './fraction.ts';
 import { generatorWords } from './words.ts';
 
+/** An element of a space with its image. */
+export interface ImagedElement {
+  readonly text: string;
+  readonly image: Combination;
+}
+
 export interface WeightBasis {
-  readonly products: readonly Product[];
+  /** Typed texts of the elements. */
+  readonly elements: readonly string[];
   readonly fWords: readonly string[];
-  /** Row i gives the coordinate of product i from the coefficients of the f-words. */
+  /** Row i gives the coordinate of element i from the coefficients of the f-words. */
   readonly inverse: readonly (readonly Fraction[])[];
 }
 
@@ -23,28 +30,30 @@ export function generatorImage(generator: Generator, decomposer: Decomposer): Co
   return image;
 }
 
-/** Throws RangeError when the products of the generators are dependent. */
-export function weightBasis(
+/** The products of the generators at a weight. */
+export function imagedProducts(
   weight: number,
-  least: 1 | 3,
   generators: readonly Generator[],
   imageOf: (generator: Generator) => Combination,
-): WeightBasis {
-  const products = productsOf(generators, weight);
-  const words = fWords(weight, least);
-  if (products.length !== words.length) throw new RangeError('weightBasis: expected as many products as f-words');
-  const columns = products.map(({ powers }) => {
+): readonly ImagedElement[] {
+  return productsOf(generators, weight).map(({ text, powers }) => {
     let image: Combination = new Map([['', ONE]]);
     for (const { generator, count } of powers) {
       for (let k = 0; k < count; k++) image = product(image, imageOf(generator), fProduct);
     }
-    return image;
+    return { text, image };
   });
-  const matrix = words.map((word) => columns.map((image) => image.get(word) ?? ZERO));
-  return { products, fWords: words, inverse: invert(matrix) };
 }
 
-/** The coordinates of an image in the products, in their order. */
+/** Throws RangeError when the elements are dependent or do not fill the weight. */
+export function weightBasis(weight: number, least: 1 | 3, elements: readonly ImagedElement[]): WeightBasis {
+  const words = fWords(weight, least);
+  if (elements.length !== words.length) throw new RangeError('weightBasis: expected as many elements as f-words');
+  const matrix = words.map((word) => elements.map(({ image }) => image.get(word) ?? ZERO));
+  return { elements: elements.map(({ text }) => text), fWords: words, inverse: invert(matrix) };
+}
+
+/** The coordinates of an image in the elements, in their order. */
 export function coordinates(image: Combination, basis: WeightBasis): Fraction[] {
   return basis.inverse.map((row) =>
     row.reduce((sum, entry, j) => {
@@ -60,7 +69,7 @@ function invert(matrix: readonly (readonly Fraction[])[]): Fraction[][] {
   const rows = matrix.map((row, i) => [...row, ...row.map((_, j) => (i === j ? ONE : ZERO))]);
   for (let c = 0; c < size; c++) {
     const pivotRow = rows.findIndex((row, i) => i >= c && (row[c] as Fraction).p !== 0n);
-    if (pivotRow < 0) throw new RangeError('invert: expected independent products of generators');
+    if (pivotRow < 0) throw new RangeError('invert: expected independent elements');
     const pivot = rows[pivotRow] as Fraction[];
     rows[pivotRow] = rows[c] as Fraction[];
     const scale = inverse(pivot[c] as Fraction);

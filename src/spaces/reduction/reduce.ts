@@ -1,6 +1,6 @@
 /**
  * Writes constants exactly in the generating set of a space: multiple zeta values up to weight 12 in `mzv`, alternating sums
- * up to weight 8 in `alternating` (and, up to weight 5, in `polylog-half`), together with log 2, even powers of π, ζ(n),
+ * up to weight 8 in `alternating` (and, up to weight 5, in `polylog-half`; zeta values also in `mzv-hoffman`), together with log 2, even powers of π, ζ(n),
  * Li_n(1/2), Li_n(±1), and sums, products and powers of all these.
  *
  * The decomposition is exact arithmetic (decompose.ts) on top of one stored fraction a word, which was read off from 150
@@ -11,9 +11,17 @@ import type { CallTerm, Term } from '../../constants/term.ts';
 import { InputError } from '../../number/errors.ts';
 import alternatingData from '../data/alternating.json' with { type: 'json' };
 import zetaData from '../data/mzv.json' with { type: 'json' };
+import { hoffmanIndices } from '../real-sums.ts';
 import { spaceOf } from '../registry.ts';
 import { accumulateAll, type Combination, product } from './combination.ts';
-import { coordinates, generatorImage, type WeightBasis, weightBasis } from './coordinates.ts';
+import {
+  coordinates,
+  generatorImage,
+  type ImagedElement,
+  imagedProducts,
+  type WeightBasis,
+  weightBasis,
+} from './coordinates.ts';
 import { Decomposer, fProduct, fWeight } from './decompose.ts';
 import { type Fraction, fraction, ONE, readFraction } from './fraction.ts';
 import { convergentWords, polylogAtHalf, signedSum } from './words.ts';
@@ -30,7 +38,7 @@ export interface Reducer {
 }
 
 /** Spaces that `makeReducer` knows. */
-export const reducibleSpaces: readonly string[] = ['mzv', 'alternating', 'polylog-half'];
+export const reducibleSpaces: readonly string[] = ['mzv', 'mzv-hoffman', 'alternating', 'polylog-half'];
 
 /** A reducer into this space; keeps what it has worked out. Throws InputError for a space without reductions. */
 export function makeReducer(spaceKey: string): Reducer {
@@ -38,7 +46,7 @@ export function makeReducer(spaceKey: string): Reducer {
     throw new InputError('no-reductions', `There are no stored reductions into "${spaceKey}".`);
   }
   const space = spaceOf(spaceKey);
-  const zetas = spaceKey === 'mzv';
+  const zetas = spaceKey.startsWith('mzv');
   const least = zetas ? 3 : 1;
   const letters = zetas ? ['0', '1'] : ['0', '1', 'm'];
   const decomposer = new Decomposer(primitiveTable((zetas ? zetaData : alternatingData).weights, letters));
@@ -46,7 +54,7 @@ export function makeReducer(spaceKey: string): Reducer {
   const basisAt = (weight: number): WeightBasis => {
     const known = bases.get(weight);
     if (known !== undefined) return known;
-    const made = weightBasis(weight, least, space.generators, (generator) => generatorImage(generator, decomposer));
+    const made = weightBasis(weight, least, elementsAt(spaceKey, weight, decomposer));
     bases.set(weight, made);
     return made;
   };
@@ -65,11 +73,22 @@ export function makeReducer(spaceKey: string): Reducer {
       .flatMap(([weight, part]) => {
         const basis = basisAt(weight);
         return coordinates(part, basis).flatMap((coefficient, k) =>
-          coefficient.p === 0n ? [] : [{ element: basis.products[k]?.text as string, coefficient }],
+          coefficient.p === 0n ? [] : [{ element: basis.elements[k] as string, coefficient }],
         );
       });
   };
   return { reduce };
+}
+
+function elementsAt(spaceKey: string, weight: number, decomposer: Decomposer): readonly ImagedElement[] {
+  if (spaceKey !== 'mzv-hoffman') {
+    return imagedProducts(weight, spaceOf(spaceKey).generators, (generator) => generatorImage(generator, decomposer));
+  }
+  return hoffmanIndices(weight).map((indices) => {
+    const image = new Map<string, Fraction>();
+    for (const [word, factor] of signedSum(indices)) accumulateAll(image, decomposer.image(word), factor);
+    return { text: indices.length === 0 ? '1' : `zeta(${indices.join(',')})`, image };
+  });
 }
 
 function primitiveTable(weights: readonly string[], letters: readonly string[]): (word: string) => Fraction {

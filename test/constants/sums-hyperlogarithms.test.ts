@@ -64,6 +64,10 @@ describe('harmonic polylogarithms, G and MPL', () => {
     ['H(0,1/2;1/3)', 'bad-index'],
     ['MPL(2,1;2,1)', 'divergent'],
     ['MPL(2,1;1/2,0)', 'zero-argument'],
+    ['MPL(2,1;sqrt(2),1)', 'divergent'],
+    ['MPL(2,1;1+i/2,1)', 'divergent'],
+    ['G(sqrt(4),1/3-i;2)', 'undecided'],
+    ['G(3,2-sqrt(4);2)', 'undecided'],
   ])('%s is refused as %s', (text, code) => {
     let caught: unknown;
     try {

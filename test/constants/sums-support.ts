@@ -1,69 +1,15 @@
 /** Helpers of the tests of nested sums. */
 import { readFileSync } from 'node:fs';
 import { expect } from 'vitest';
+import { evaluateTerm } from '../../src/constants/evaluate.ts';
 import type { EvaluationContext } from '../../src/constants/family.ts';
 import { sumFamilies } from '../../src/constants/sums/index.ts';
-import { type CallTerm, rational, type Term } from '../../src/constants/term.ts';
-import { makeProduct, makeSum, parseTerm } from '../../src/expression/parse.ts';
-import { type Ball, fromInteger, fromRational, overlaps, sqrt, timesPowerOfTwo } from '../../src/number/ball.ts';
-import {
-  add as addValues,
-  divide as divideValues,
-  isComplex,
-  multiply as multiplyValues,
-  negate as negateValue,
-  toComplex,
-  type Value,
-} from '../../src/number/complex.ts';
-import { absolute } from '../../src/number/integer.ts';
+import type { CallTerm, Term } from '../../src/constants/term.ts';
+import { parseTerm } from '../../src/expression/parse.ts';
+import { type Ball, overlaps } from '../../src/number/ball.ts';
+import { isComplex, toComplex, type Value } from '../../src/number/complex.ts';
 
-/** The few arguments that occur in these tests, by ways of their own: stored digits of PARI/GP for π and γ (up to 1,000), logarithms as −Li₁. */
-export const context: EvaluationContext = {
-  argument: (term, bits) => localArgument(term, bits),
-};
-
-function localArgument(term: Term, bits: number): Value {
-  const more = bits + 16;
-  switch (term.kind) {
-    case 'rational':
-      return fromRational(term.p, term.q, more);
-    case 'symbol':
-      if (term.name === 'i') return { re: fromInteger(0n), im: fromInteger(1n) };
-      if (term.name === 'r6') {
-        return { re: fromRational(1n, 2n, 1), im: timesPowerOfTwo(sqrt(fromInteger(3n), more), -1) };
-      }
-      return decimalBall(stored(term.name), more);
-    case 'sum':
-      return term.terms.map((t) => localArgument(t, more)).reduce((a, b) => addValues(a, b));
-    case 'product':
-      return term.factors.map((t) => localArgument(t, more)).reduce((a, b) => multiplyValues(a, b, more));
-    case 'power': {
-      if (term.exponent.kind !== 'rational' || term.exponent.q !== 1n) throw new Error('integer powers only');
-      let result: Value = fromInteger(1n);
-      const base = localArgument(term.base, more);
-      for (let k = 0n; k < absolute(term.exponent.p); k++) result = multiplyValues(result, base, more);
-      return term.exponent.p < 0n ? divideValues(fromInteger(1n), result, more) : result;
-    }
-    case 'call': {
-      const [x] = term.groups[0] ?? [];
-      if (x === undefined) throw new Error('an argument expected');
-      if (term.name === 'sqrt') return sqrt(localArgument(x, more + 8) as Ball, more);
-      if (term.name !== 'log') throw new Error(`not known here: ${term.name}`);
-      // log x = Li₁(1 − 1/x) for a rational x > 1/2, else −Li₁(1 − x).
-      const big = x.kind === 'rational' && 2n * x.p > x.q;
-      const point = big ? rational(x.p - x.q, x.p) : makeSum([rational(1n), makeProduct([rational(-1n), x])]);
-      if (point.kind === 'rational' && point.p === 0n) return fromInteger(0n);
-      const li = evaluateClaimed({ kind: 'call', name: 'MPL', groups: [[rational(1n)], [point]] }, more);
-      return big ? li : negateValue(li);
-    }
-  }
-}
-
-function stored(id: string): string {
-  const entry = referenceConstants('elementary').find((constant) => constant.id === id);
-  if (entry === undefined) throw new Error(`no stored digits of ${id}`);
-  return entry.digits;
-}
+export const context: EvaluationContext = { argument: (term, bits) => evaluateTerm(term, bits) };
 
 const integer = (text: string): Term => ({ kind: 'rational', p: BigInt(text), q: 1n });
 
@@ -87,11 +33,6 @@ export function readCall(text: string): CallTerm {
 /** The family that claims a call, and the checked arguments. */
 export function claim(text: string) {
   return claimTerm(/^\w+\([-\w,;^]*\)$/.test(text) ? readCall(text) : parseTerm(text), text);
-}
-
-function evaluateClaimed(term: Term, bits: number): Value {
-  const { family, args } = claimTerm(term, 'an argument');
-  return family.evaluate(args, bits, context);
 }
 
 function claimTerm(term: Term, text: string) {

@@ -2,6 +2,7 @@
  * Harmonic polylogarithms H, multiple polylogarithms G with any letters, and nested sums MPL with algebraic arguments: one
  * evaluation (iterated.ts) behind three notations. Radii: double-tails.ts, general-tails.ts and path.ts.
  */
+import { add, fromInteger, sign, square, subtract } from '../../number/ball.ts';
 import { toComplex, type Value } from '../../number/complex.ts';
 import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext, Family } from '../family.ts';
@@ -124,10 +125,7 @@ function parseMpl(term: Parameters<Family['parse']>[0]): HyperlogArgs | null {
     const product: Term = { kind: 'product', factors: points.slice(0, j + 1) };
     const polar = polarOf(product);
     if (polar !== null && polar.p > polar.q) {
-      throw new InputError(
-        'divergent',
-        `${text} diverges: a product of its first arguments is larger than 1 in modulus.`,
-      );
+      throw divergentSum(text);
     }
     letters.push({ kind: 'power', base: product, exponent: rational(-1n) });
   });
@@ -135,6 +133,21 @@ function parseMpl(term: Parameters<Family['parse']>[0]): HyperlogArgs | null {
   const integral = integralOf(letters, ONE, 1, text);
   const latex = `\\mathrm{Li}_{${indices.join(',')}}(${points.map(termLatex).join(',')})`;
   return { integral, text, latex, weight: weightOf(indices), real: isRealIntegral(points, ONE, integral) };
+}
+
+/** Refuses a nested sum whose letters 1/(z₁⋯z_j) are certainly inside the unit circle; exact ones were checked on parsing. */
+function refuseOutside({ integral, text }: HyperlogArgs, context: EvaluationContext): void {
+  for (const { kind, polar, over } of integral.letters) {
+    if (kind !== 'other' || polar !== null) continue;
+    const { re, im } = toComplex(context.argument(over[0], 128));
+    const norm = add(square(re, 200), square(im, 200));
+    if (sign(subtract(norm, fromInteger(1n))) === -1) throw divergentSum(text);
+  }
+}
+
+function divergentSum(text: string): InputError {
+  const message = `${text} diverges: a product of its first arguments is larger than 1 in modulus.`;
+  return new InputError('divergent', message);
 }
 
 const shared = {
@@ -172,6 +185,14 @@ export const multiplePolylogarithms: Family<HyperlogArgs> = {
 
 export const algebraicPolylogarithms: Family<HyperlogArgs> = {
   ...shared,
+  evaluate: (args, bits, context) => {
+    refuseOutside(args, context);
+    return evaluate(args, bits, context);
+  },
+  evaluateMany: (all, bits, context) => {
+    for (const args of all) refuseOutside(args, context);
+    return evaluateMany(all, bits, context);
+  },
   key: 'algebraic-nested-sums',
   title: 'Nested sums at algebraic arguments',
   names: ['MPL'],

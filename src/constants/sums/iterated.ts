@@ -2,8 +2,8 @@
  * Iterated integrals G(a₁,…,a_n; z) = ∫₀^z dt/(t − a₁) G(a₂,…,a_n; t) for exact arguments: sorts the letters, takes trailing
  * zeros out as powers of log z, and hands the rest to the cheapest pass that can carry it.
  */
-import { fromInteger } from '../../number/ball.ts';
-import { add, divide, isComplex, multiply, toComplex, type Value } from '../../number/complex.ts';
+import { containsZero, fromInteger } from '../../number/ball.ts';
+import { add, divide, multiply, subtract, toComplex, type Value } from '../../number/complex.ts';
 import { InputError } from '../../number/errors.ts';
 import type { EvaluationContext } from '../family.ts';
 import { call, isRational, type Term } from '../term.ts';
@@ -194,8 +194,28 @@ function chooseAlphabet(letters: readonly PathLetter[]): Alphabet {
   const codes = new Map(letters.map(({ key }, k) => [key, k + 2]));
   return {
     letter: (key) => letterOf(codes.get(key) as number),
-    evaluate: (words, bits, context) => evaluateWordsOnPath(words, generalLetters(letters, context), bits, context),
+    evaluate: (words, bits, context) => {
+      refuseUndecided(letters, context);
+      return evaluateWordsOnPath(words, generalLetters(letters, context), bits, context);
+    },
   };
+}
+
+/** A letter without exact form that may be 0 or the end point itself cannot be used. */
+function refuseUndecided(letters: readonly PathLetter[], context: EvaluationContext): void {
+  for (const { polar, over } of letters) {
+    if (polar !== null) continue;
+    const [letter, end] = over.map((term) => context.argument(term, 160)) as [Value, Value];
+    for (const difference of [letter, subtract(letter, end)]) {
+      const { re, im } = toComplex(difference);
+      if (!containsZero(re) || !containsZero(im)) continue;
+      const what = difference === letter ? '0' : 'the end point';
+      throw new InputError(
+        'undecided',
+        `The letter ${termText(over[0])} cannot be told from ${what}; type it as such if it is.`,
+      );
+    }
+  }
 }
 
 function generalLetters(letters: readonly PathLetter[], context: EvaluationContext): Letters {
@@ -220,6 +240,6 @@ function generalLetters(letters: readonly PathLetter[], context: EvaluationConte
 function quotient([letter, end]: readonly [Term, Term], bits: number, context: EvaluationContext): Value {
   for (let extra = 32; ; extra *= 2) {
     const ratio = divide(context.argument(letter, bits + extra), context.argument(end, bits + extra), bits + 8);
-    if (radiusWithin(ratio, bits)) return isComplex(ratio) ? ratio : ratio;
+    if (radiusWithin(ratio, bits)) return ratio;
   }
 }

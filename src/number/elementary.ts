@@ -32,10 +32,14 @@ export function exp(x: Ball, bits: number): Ball {
     if (x.mid > 0n) throw new RangeError('exp: expected an argument below 2^32');
     return { mid: 0n, rad: 1n, bits };
   }
-  const k = Math.round(Math.max(-LARGEST_EXPONENT, approximate(x) * Math.LOG2E) - 0.5);
+  let k = Math.floor(Math.max(-LARGEST_EXPONENT, approximate(x) * Math.LOG2E));
   const work = Math.max(8, bits + Math.max(k, -bits) + 8);
-  const reduced = subtract(withBits(x, work), timesInteger(logTwo(work + 34), BigInt(k)));
-  const argument = withBits(reduced, work);
+  const reduce = (): Ball => withBits(subtract(withBits(x, work), timesInteger(logTwo(work + 34), BigInt(k))), work);
+  let argument = reduce();
+  if (argument.mid < 0n) {
+    k -= 1;
+    argument = reduce();
+  }
   const point = argument.mid < 0n ? 0n : argument.mid;
   // Keeps the kernel's argument in [0, 1); the distance moved counts as radius.
   const slack = absolute(argument.mid - point);
@@ -223,29 +227,45 @@ export function integerRoot(value: bigint, n: number): bigint {
   }
 }
 
-/** The arithmetic-geometric mean of two positive balls. */
+/**
+ * The arithmetic-geometric mean of two positive balls. The steps stop once the relative gap x = (a − b)/(a + b) is below a sixth of
+ * the bits: M(a, b) = m (1 − x²/4 − 5x⁴/64 − …) with m = (a + b)/2; the coefficients beyond 1 are negative and sum to −1
+ * (M vanishes at x = 1), so what follows x⁴ is below m x⁶.
+ */
 export function agm(a: Ball, b: Ball, bits: number): Ball {
   if (a.mid <= a.rad || b.mid <= b.rad) throw new PrecisionError('agm: expected two clearly positive numbers');
-  const work = bits + 16 + Math.max(0, magnitude(a), magnitude(b));
+  const least = Math.min(...[a, b].map((x) => bitLength(x.mid - x.rad) - x.bits));
+  const work = bits + 16 + Math.max(0, magnitude(a), magnitude(b)) + 2 * Math.max(0, -least);
   let x = withBits(a, work);
   let y = withBits(b, work);
+  const enough = Math.ceil((bits + 16 + Math.max(0, magnitude(a), magnitude(b))) / 6);
   for (;;) {
-    const gap = absolute(x.mid - y.mid);
-    // Both means lie between x and y, so the limit does; the radius covers the gap.
-    if (gap <= 8n + x.rad + y.rad) break;
-    const mean = timesPowerOfTwo(add(x, y), -1);
+    const mean = withBits(timesPowerOfTwo(add(x, y), -1), work);
+    const gap = timesPowerOfTwo(subtract(x, y), -1);
+    if ((absolute(gap.mid) + gap.rad) << BigInt(enough) <= mean.mid - mean.rad) return nearMean(mean, gap, bits, work);
     y = geometricMean(x, y, work);
-    x = withBits(mean, work);
+    x = mean;
   }
-  return withBits(widen(x, absolute(x.mid - y.mid) + y.rad), bits);
+}
+
+/** m (1 − x²/4 − 5x⁴/64) with x = gap/m, widened by m x⁶. */
+function nearMean(m: Ball, gap: Ball, bits: number, work: number): Ball {
+  const ratio = divide(gap, m, work);
+  const square = multiply(ratio, ratio, work);
+  const fourth = multiply(square, square, work);
+  const series = add(timesPowerOfTwo(square, -2), timesPowerOfTwo(timesInteger(fourth, 5n), -6));
+  const rest = multiply(multiply(fourth, square, work), m, work);
+  const value = subtract(m, multiply(series, m, work));
+  return withBits(widen(withBits(value, work), absolute(rest.mid) + rest.rad), bits);
 }
 
 /** √(xy) for clearly positive x and y. */
 export function geometricMean(x: Ball, y: Ball, bits: number): Ball {
   const product = multiply(x, y, 2 * bits);
-  const mid = integerSqrt(withBits({ ...product, rad: 0n }, 2 * bits).mid);
   if (product.mid <= product.rad) throw new PrecisionError('geometricMean: expected clearly positive numbers');
-  // √p varies by at most r/√(p − r) over the ball; √(p − r) ≥ √p·(1 − r/p).
-  const low = integerSqrt(product.mid - product.rad);
-  return { mid, rad: 2n + product.rad / (low === 0n ? 1n : low), bits };
+  const mid = integerSqrt(product.mid);
+  // √p varies by at most r/√(p − r) ≤ r/(√p − r/√p) over the ball; both floors are covered by the last units.
+  const below = mid - product.rad / mid - 1n;
+  if (below <= 0n) throw new PrecisionError('geometricMean: expected clearly positive numbers');
+  return { mid, rad: 2n + product.rad / below, bits };
 }

@@ -5,7 +5,6 @@ import { basisValues, inColumns } from './numbers.ts';
 import { GUARD_BITS, LOG2_10, type Problem, type SearchOptions } from './problem.ts';
 import type { SearchRecord } from './record.ts';
 import { relateRows } from './relate.ts';
-import { relationRecord } from './report.ts';
 
 /** A relation of the constants without the value, as a vector with 0 in front; null when none shows at the digits of the value. */
 export async function relationAmongConstants(problem: Problem, options: SearchOptions): Promise<bigint[] | null> {
@@ -36,11 +35,7 @@ export async function dependentRecord(
   const involved = elements.filter((_, k) => integers[k + 1] !== 0n).map((e) => e.text);
   return {
     ...base,
-    ...relationRecord(
-      elements,
-      integers.map((c) => c / (rest === 0n ? 1n : rest)),
-      undefined,
-    ),
+    ...problem.present(integers.map((c) => c / (rest === 0n ? 1n : rest))),
     outcome: 'basis-dependent',
     diagnosis: [
       `The constants ${involved.join(', ')} are linearly dependent: the relation holds to ${Math.floor(bits / LOG2_10)} digits without the value. Leave one of them out and search again.`,

@@ -10,7 +10,7 @@ import { budgetFor, digitsNeeded } from './estimate.ts';
 import { LOG2_10, type Problem, type SearchOptions } from './problem.ts';
 import type { SearchRecord } from './record.ts';
 import { relate } from './relate.ts';
-import { emptyRecord, relationRecord } from './report.ts';
+import { emptyRecord, normText } from './report.ts';
 
 const CHANCE =
   'The best candidate does not involve the value and is not a relation among the constants either: the digits are too few for this basis.';
@@ -75,7 +75,7 @@ export async function judge(
   });
   return {
     ...base,
-    ...relationRecord(elements, integers, request.divideBy),
+    ...problem.present(integers),
     outcome: 'relation',
     ...summary(assessment, outcome.normBoundLog10),
   };
@@ -153,11 +153,4 @@ async function otherMethod(
   if (method === 'pslq' && integers.length > 40) return null;
   const again = await relate(problem, digits, method, options, null);
   return { method, same: again.kind === 'relation' && same(again.coefficients, integers) };
-}
-
-/** A norm bound as text, rounded down to two digits. */
-function normText(log10: number): string {
-  const exponent = Math.floor(log10);
-  const lead = Math.floor(10 ** (log10 - exponent) * 10) / 10;
-  return exponent < 6 ? `${Math.floor(10 ** log10 * 10) / 10}` : `${lead}e${exponent}`;
 }

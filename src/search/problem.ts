@@ -9,7 +9,8 @@ import type { Method } from '../relation/contract.ts';
 import { type BasisElement, readTyped, resolveBasis } from './basis.ts';
 import { believing, type ReadValue, readValue } from './intake.ts';
 import { basisValues, inColumns } from './numbers.ts';
-import type { SearchProgress } from './record.ts';
+import type { SearchProgress, SearchRecord } from './record.ts';
+import { relationRecord } from './report.ts';
 import type { SearchRequest } from './request.ts';
 
 export interface SearchOptions {
@@ -33,17 +34,16 @@ export interface Problem {
   readonly constants: readonly (readonly Ball[])[];
   readonly scaleLog10: number;
   readonly method: Method;
+  /** Coefficients and expression of an integer vector over (value, basis…). */
+  present(integers: readonly bigint[]): Pick<SearchRecord, 'relation' | 'integers' | 'expression'>;
 }
 
-/** Reads and evaluates all that a request names. Throws InputError for a request that cannot be carried out. */
+/** Reads and evaluates all that a linear request names. Throws InputError for a request that cannot be carried out. */
 export function prepareProblem(
   request: SearchRequest,
   options: SearchOptions,
   onProgress: (f: number) => void,
 ): Problem {
-  const form = request.form ?? 'linear';
-  if (form !== 'linear')
-    throw new InputError('unknown-form', `The form “${form}” is not known here; relations are linear.`);
   if (request.basis === undefined) throw new InputError('empty-basis', 'The request names no basis.');
   const value = readValue(request);
   const elements = resolveBasis(request.basis);
@@ -75,6 +75,7 @@ export function prepareProblem(
     constants,
     scaleLog10: Math.max(...sizes),
     method: request.method ?? 'pslq',
+    present: (integers) => relationRecord(elements, integers, request.divideBy),
   };
 }
 

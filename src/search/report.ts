@@ -54,7 +54,7 @@ export function relationRecord(
     coefficient: q === 1n || p === 0n ? `${p}` : `${p}/${q}`,
   }));
   const sum = combination(solved.map(({ element, p, q }) => ({ p, q, text: element.text, latex: element.latex })));
-  return { relation, integers: integers.map(String), expression: withFactor(sum, divideBy) };
+  return { relation, integers: integers.map(String), expression: withFactor(sum, lead === 0n ? undefined : divideBy) };
 }
 
 /** The sum times the factor that the value had been divided by. */
@@ -71,4 +71,11 @@ function withFactor(
     text: `${bracket ? `(${text})` : text}*(${sum.text})`,
     latex: `${bracket ? `\\left(${latex}\\right)` : latex}\\left(${sum.latex}\\right)`,
   };
+}
+
+/** A norm bound as text, rounded down to two digits. */
+export function normText(log10: number): string {
+  const exponent = Math.floor(log10);
+  const lead = Math.floor(10 ** (log10 - exponent) * 10) / 10;
+  return exponent < 6 ? `${Math.floor(10 ** log10 * 10) / 10}` : `${lead}e${exponent}`;
 }

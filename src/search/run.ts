@@ -1,7 +1,10 @@
 /** One search from request to record: constants, relation, evidence. */
+import { InputError } from '../number/errors.ts';
 import type { RelationOutcome } from '../relation/contract.ts';
+import { algebraicSearch } from './algebraic.ts';
 import { digitsUsed } from './estimate.ts';
 import { judge } from './judge.ts';
+import { multiplicativeProblem } from './multiplicative.ts';
 import { type Problem, prepareProblem, type SearchOptions } from './problem.ts';
 import type { SearchRecord } from './record.ts';
 import { type Report, relate } from './relate.ts';
@@ -20,7 +23,8 @@ export async function runSearch(request: SearchRequest, options: SearchOptions =
   const start = performance.now();
   const report = reporter(options, start);
   report('constants', 0);
-  const problem = prepareProblem(request, options, (fraction) => report('constants', fraction));
+  if (request.form === 'algebraic') return algebraicSearch(request, options, report);
+  const problem = problemOf(request, options, (fraction) => report('constants', fraction));
   const searching = performance.now();
   timings.constantsMs = searching - start;
   const { outcome, digits } = await search(problem, options, report);
@@ -33,6 +37,18 @@ export async function runSearch(request: SearchRequest, options: SearchOptions =
   timings.evidenceMs = performance.now() - judging;
   report('evidence', 1);
   return { ...record, timings };
+}
+
+function problemOf(request: SearchRequest, options: SearchOptions, onProgress: (fraction: number) => void): Problem {
+  const { form = 'linear' } = request;
+  if (form !== 'linear' && form !== 'multiplicative') {
+    throw new InputError(
+      'unknown-form',
+      `The form “${form}” is not known; forms are linear, multiplicative and algebraic.`,
+    );
+  }
+  const problem = prepareProblem(request, options, onProgress);
+  return form === 'linear' ? problem : multiplicativeProblem(problem);
 }
 
 /** First with part of the trusted digits; without a relation again with all of them, so that the negative is as strong as they allow. */

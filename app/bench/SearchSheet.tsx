@@ -1,28 +1,35 @@
 /** The third part: start, watch, cancel. */
+import { digitsUsed } from '../../src/search/estimate.ts';
 import type { SearchProgress } from '../../src/search/record.ts';
+import { Power } from '../parts/Power.tsx';
+import { Sheet } from '../parts/Sheet.tsx';
 import type { ValueEntry } from '../state/project.ts';
 import { useBench } from '../state/react.ts';
 import type { Reading } from './reading.ts';
 
-const STAGES = { constants: 'Computing constants', relation: 'Searching', evidence: 'Weighing the evidence' } as const;
+const STAGES: readonly { readonly key: SearchProgress['stage']; readonly word: string }[] = [
+  { key: 'constants', word: 'Constants' },
+  { key: 'relation', word: 'Relation' },
+  { key: 'evidence', word: 'Evidence' },
+];
 
 export function SearchSheet({
   value,
   reading,
   onSearch,
+  searched,
 }: {
   value: ValueEntry;
   reading: Reading;
   onSearch: () => void;
+  /** Whether the present value and basis have been searched already. */
+  searched: boolean;
 }) {
   const running = useBench((s) => s.running[value.id]);
   const problem = useBench((s) => s.problems[value.id]);
   const missing = missingWord(reading, value.basis.length);
   return (
-    <section className="sheet" aria-labelledby="search-heading">
-      <h2 id="search-heading">
-        <span className="step">3</span> Search
-      </h2>
+    <Sheet step={3} title="Search" figures={searched && running === undefined ? figuresOf(value) : []}>
       {running === undefined ? (
         <div className="row middle">
           <button
@@ -32,73 +39,95 @@ export function SearchSheet({
             disabled={missing !== null}
             aria-keyshortcuts="Control+Enter"
           >
-            Search
+            {searched ? 'Search again' : 'Search'}
           </button>
           <p className="note">
             {missing ??
-              'Integer relations among the value and the basis, by PSLQ, confirmed by lattice reduction. Ctrl + Enter.'}
+              'Looks for integers that tie the value to the basis, by PSLQ, and asks lattice reduction for a second opinion.'}
           </p>
         </div>
       ) : (
-        <Progress progress={running.progress} onCancel={() => running.controller.abort()} />
+        <Progress
+          progress={running.progress}
+          trusted={reading.kind === 'value' ? reading.trusted : 0}
+          onCancel={() => running.controller.abort()}
+        />
       )}
       {problem !== undefined && (
         <p className="note wrong" role="alert">
           {problem}
         </p>
       )}
-    </section>
+    </Sheet>
   );
+}
+
+function figuresOf(value: ValueEntry): string[] {
+  const timings = value.records[0]?.timings;
+  if (timings === undefined) return [];
+  const total = timings.constantsMs + timings.relationMs + timings.evidenceMs;
+  return [`took ${seconds(total)}`];
 }
 
 function missingWord(reading: Reading, constants: number): string | null {
   if (reading.kind === 'empty') return 'Paste a value first.';
-  if (reading.kind === 'wrong') return 'The value cannot be read yet.';
-  return constants === 0 ? 'Choose a space or add constants first.' : null;
+  if (reading.kind === 'wrong') return 'The value cannot be read yet; see above.';
+  return constants === 0 ? 'Choose a basis first.' : null;
 }
 
-function Progress({ progress, onCancel }: { progress: SearchProgress | null; onCancel: () => void }) {
+function Progress({
+  progress,
+  trusted,
+  onCancel,
+}: {
+  progress: SearchProgress | null;
+  trusted: number;
+  onCancel: () => void;
+}) {
+  const at = STAGES.findIndex((s) => s.key === progress?.stage);
   const fraction = progress?.fraction ?? 0;
+  const offered = digitsUsed(trusted);
   return (
     <div className="progress">
       <div className="row middle">
-        <progress value={fraction} max={1} aria-label={progress === null ? 'Starting' : STAGES[progress.stage]} />
-        <button type="button" onClick={onCancel}>
+        <ol className="stages" aria-label="Stages of the search">
+          {STAGES.map((stage, k) => (
+            <li key={stage.key} aria-current={k === at ? 'step' : undefined}>
+              <span>{stage.word}</span>
+              <progress value={k < at ? 1 : k === at ? fraction : 0} max={1} aria-label={stage.word} />
+            </li>
+          ))}
+        </ol>
+        <button type="button" onClick={onCancel} aria-keyshortcuts="Escape">
           Cancel
         </button>
       </div>
       <dl className="facts">
-        <div>
-          <dt>Stage</dt>
-          <dd>{progress === null ? 'Starting' : STAGES[progress.stage]}</dd>
-        </div>
-        <div>
-          <dt>Digits consumed</dt>
-          <dd>{progress?.stage === 'relation' ? `${Math.round(fraction * 100)} %` : '–'}</dd>
-        </div>
-        <div>
-          <dt>Norm bound so far</dt>
-          <dd>
-            {progress?.stage === 'relation' && progress.normBoundLog10 > 0
-              ? `10^${progress.normBoundLog10.toFixed(1)}`
-              : '–'}
-          </dd>
-        </div>
-        <div>
-          <dt>Elapsed</dt>
-          <dd>{seconds(progress?.elapsedMs ?? 0)}</dd>
-        </div>
-        <div>
-          <dt>Remaining</dt>
-          <dd>{progress?.remainingMs == null ? '–' : `about ${seconds(progress.remainingMs)}`}</dd>
-        </div>
+        <Fact name="Digits consumed">
+          {at < 1 ? '0' : at === 1 ? Math.round(fraction * offered) : offered} of {offered}
+        </Fact>
+        <Fact name="Any relation is longer than">
+          {progress !== null && progress.normBoundLog10 > 0 ? <Power log10={progress.normBoundLog10} /> : '–'}
+        </Fact>
+        <Fact name="Elapsed">{seconds(progress?.elapsedMs ?? 0)}</Fact>
+        <Fact name="This stage still needs">
+          {progress?.remainingMs == null ? '–' : `about ${seconds(progress.remainingMs)}`}
+        </Fact>
       </dl>
     </div>
   );
 }
 
+function Fact({ name, children }: { name: string; children: React.ReactNode }) {
+  return (
+    <div>
+      <dt>{name}</dt>
+      <dd>{children}</dd>
+    </div>
+  );
+}
+
 function seconds(ms: number): string {
-  return ms < 60_000
-    ? `${(ms / 1000).toFixed(1)} s`
-    : `${Math.floor(ms / 60_000)} min ${Math.round((ms % 60_000) / 1000)} s`;
+  if (ms < 60_000) return `${(ms / 1000).toFixed(ms < 9950 ? 1 : 0)} s`;
+  return `${Math.floor(ms / 60_000)} min ${Math.round((ms % 60_000) / 1000)} s`;
 }

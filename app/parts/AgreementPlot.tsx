@@ -24,6 +24,7 @@ export function AgreementPlot({ evidence }: { evidence: Evidence }) {
   return (
     <figure className="plot">
       <svg
+        className="plot-picture"
         viewBox={`0 0 ${WIDTH} ${HEIGHT}`}
         role="img"
         aria-label={`Agreement plot: ${sentence}. Chance alone could give ${Math.ceil(budget)} digits.`}

@@ -2,7 +2,7 @@
 import { useEffect, useState } from 'react';
 import { useBench } from '../state/react.ts';
 
-export function CopyButton({ label, text }: { label: string; text: string }) {
+export function CopyButton({ label, text, primary = false }: { label: string; text: string; primary?: boolean }) {
   const [state, setState] = useState<'idle' | 'copied' | 'failed'>('idle');
   const announce = useBench((s) => s.announce);
   useEffect(() => {
@@ -17,12 +17,14 @@ export function CopyButton({ label, text }: { label: string; text: string }) {
       announce(`${label.replace(/^Copy /, '')} copied.`);
     } catch {
       setState('failed');
-      announce('The browser did not allow copying.');
+      announce('The browser did not allow copying; select the text and copy it by hand.');
     }
   };
+  const word = state === 'copied' ? 'Copied' : state === 'failed' ? 'Not allowed' : label;
   return (
-    <button type="button" onClick={copy} data-state={state}>
-      {state === 'copied' ? '✓ Copied' : state === 'failed' ? 'Not allowed' : label}
+    <button type="button" className={primary ? 'primary copy' : 'copy'} onClick={copy} data-state={state}>
+      {word}
+      {state === 'copied' && <span aria-hidden="true"> ✓</span>}
     </button>
   );
 }

@@ -1,7 +1,7 @@
 /** The verdict as a word with a shape of its own, so that colour is never needed to tell verdicts apart. */
 import type { SearchRecord } from '../../src/search/record.ts';
 
-export type Mark =
+export type MarkKey =
   | 'holds'
   | 'tentative'
   | 'spurious'
@@ -12,7 +12,7 @@ export type Mark =
   | 'open'
   | 'stale';
 
-const WORDS: Readonly<Record<Mark, string>> = {
+const WORDS: Readonly<Record<MarkKey, string>> = {
   holds: 'Holds',
   tentative: 'Tentative',
   spurious: 'Spurious',
@@ -24,13 +24,13 @@ const WORDS: Readonly<Record<Mark, string>> = {
   stale: 'Changed since search',
 };
 
-export function markOf(record: SearchRecord | null): Mark {
+export function markOf(record: SearchRecord | null): MarkKey {
   if (record === null) return 'open';
   if (record.outcome === 'relation') return record.verdict ?? 'tentative';
   return record.outcome === 'cancelled' ? 'open' : record.outcome;
 }
 
-function Shape({ mark }: { mark: Mark }) {
+function Shape({ mark }: { mark: MarkKey }) {
   switch (mark) {
     case 'holds':
       return (
@@ -73,7 +73,7 @@ export function VerdictMark({
   words = true,
   detail,
 }: {
-  mark: Mark;
+  mark: MarkKey;
   words?: boolean;
   detail?: string | undefined;
 }) {

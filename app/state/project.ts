@@ -27,6 +27,8 @@ export interface Project {
   readonly version: 1;
   readonly id: string;
   readonly title: string;
+  /** A sentence shown above the sheet until it is put away; empty for none. */
+  readonly note: string;
   readonly values: readonly ValueEntry[];
   readonly basisSets: readonly BasisSet[];
   readonly selected: string;
@@ -37,18 +39,18 @@ const MOST_RECORDS = 20;
 
 export type ValueChange = Partial<Pick<ValueEntry, 'label' | 'text' | 'trustedDigits' | 'divideBy' | 'basis'>>;
 
-export function newValue(id: string, basis: readonly string[] = []): ValueEntry {
-  return { id, label: '', text: '', trustedDigits: null, divideBy: '', basis, records: [] };
+export function newValue(id: string, basis: readonly string[] = [], text = ''): ValueEntry {
+  return { id, label: '', text, trustedDigits: null, divideBy: '', basis, records: [] };
 }
 
 export function changeValue(project: Project, id: string, change: ValueChange): Project {
   return { ...project, values: project.values.map((v) => (v.id === id ? { ...v, ...change } : v)) };
 }
 
-/** Adds an empty value that starts with the basis of the selected one, and selects it. */
-export function addValue(project: Project, id: string): Project {
+/** Adds a value that starts with the basis of the selected one, and selects it. */
+export function addValue(project: Project, id: string, text = ''): Project {
   const basis = project.values.find((v) => v.id === project.selected)?.basis ?? [];
-  return { ...project, values: [...project.values, newValue(id, basis)], selected: id };
+  return { ...project, values: [...project.values, newValue(id, basis, text)], selected: id };
 }
 
 /** Removes a value; the last one is replaced by an empty one, so that there is always one to work on. */
@@ -95,3 +97,6 @@ export function currentRecord(value: ValueEntry): SearchRecord | null {
     JSON.stringify(request.basis) === JSON.stringify(value.basis);
   return fresh ? record : null;
 }
+
+/** Longest text that a value may hold, in characters: more than any readable number has, and a page must not freeze. */
+export const LONGEST_TEXT = 800_000;

@@ -6,10 +6,14 @@ import type { BenchActions, BenchState, BenchStore } from './store.ts';
 
 export const StoreContext = createContext<BenchStore | null>(null);
 
-export function useBench<T>(pick: (state: BenchState & BenchActions) => T): T {
+export function useBenchStore(): BenchStore {
   const store = useContext(StoreContext);
-  if (store === null) throw new Error('useBench: expected a store above');
-  return useStore(store, pick);
+  if (store === null) throw new Error('useBenchStore: expected a store above');
+  return store;
+}
+
+export function useBench<T>(pick: (state: BenchState & BenchActions) => T): T {
+  return useStore(useBenchStore(), pick);
 }
 
 export function useProject(): Project {

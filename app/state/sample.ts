@@ -27,7 +27,8 @@ export function sampleProject(): Project {
     format: 'digit-assay/project',
     version: 1,
     id: 'sample',
-    title: 'Saltmarsh collaboration: tidal graphs (an invented example)',
+    title: 'Saltmarsh collaboration',
+    note: 'An invented example: three values of “tidal graphs”, their basis chosen. Search the first one, or paste a number of your own anywhere on this page.',
     values: [
       value('heron', 'Heron graph, finite part', HERON),
       value('plover', 'Plover graph, order 1/ε', PLOVER),

@@ -1,4 +1,5 @@
 /** Runs the search of one value and keeps the store informed. */
+import { InputError } from '../../src/number/errors.ts';
 import type { SearchRequest } from '../../src/search/request.ts';
 import type { EngineClient } from '../../src/worker/client.ts';
 import { AbortError } from '../../src/worker/errors.ts';
@@ -30,6 +31,13 @@ export async function startSearch(store: BenchStore, engine: EngineClient, value
     actions.searchEnded(id, { record });
   } catch (error) {
     if (error instanceof AbortError) actions.searchEnded(id, { cancelled: true });
-    else actions.searchEnded(id, { problem: error instanceof Error ? error.message : String(error) });
+    else actions.searchEnded(id, { problem: sentenceOf(error) });
   }
+}
+
+/** One plain sentence: the user's mistake as the engine words it, anything else as our own failure. */
+export function sentenceOf(error: unknown): string {
+  if (error instanceof InputError) return error.message;
+  const reason = error instanceof Error ? error.message : String(error);
+  return `The engine stopped (${reason.replace(/\.$/, '')}); your values are kept, and searching again starts it afresh.`;
 }

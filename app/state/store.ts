@@ -37,10 +37,16 @@ export interface BenchState {
 
 export interface BenchActions {
   change(id: string, change: ValueChange): void;
-  add(): void;
+  /** Adds a value and selects it. */
+  add(text?: string): void;
   remove(id: string): void;
   select(id: string): void;
   rename(title: string): void;
+  putNoteAway(): void;
+  /** Shows a project that was stored elsewhere; searches under way go on. */
+  adopt(project: Project): void;
+  /** Goes on as a project of its own, so that it can be saved beside the one changed elsewhere. */
+  keepAsCopy(): void;
   keepBasis(name: string, entries: readonly string[]): void;
   dropBasis(id: string): void;
   undo(): void;
@@ -70,8 +76,14 @@ export function createBenchStore(project: Project): BenchStore {
       problems: {},
       save: { kind: 'saved' },
       announcement: '',
-      change: (id, change) => apply(`${id}/${Object.keys(change).join()}`, (p) => changeValue(p, id, change)),
-      add: () => apply(newId(), (p) => addValue(p, newId())),
+      change: (id, change) => {
+        apply(`${id}/${Object.keys(change).join()}`, (p) => changeValue(p, id, change));
+        if (get().problems[id] !== undefined) set(({ problems }) => ({ problems: without(problems, id) }));
+      },
+      add: (text) => {
+        apply(newId(), (p) => addValue(p, newId(), text));
+        set({ announcement: 'Value added.' });
+      },
       remove: (id) => {
         get().running[id]?.controller.abort();
         apply(newId(), (p) => removeValue(p, id, newId()));
@@ -80,6 +92,13 @@ export function createBenchStore(project: Project): BenchStore {
       select: (id) =>
         set(({ history }) => ({
           history: applyEverywhere(history, (p) => (p.values.some((v) => v.id === id) ? { ...p, selected: id } : p)),
+        })),
+      putNoteAway: () => apply('note', (p) => ({ ...p, note: '' })),
+      adopt: (project) => set({ history: startHistory(project), save: { kind: 'saved' } }),
+      keepAsCopy: () =>
+        set(({ history }) => ({
+          history: startHistory({ ...history.present, id: newId(), title: `${history.present.title} (copy)` }),
+          save: { kind: 'saving' },
         })),
       rename: (title) => apply('title', (p) => ({ ...p, title })),
       keepBasis: (name, entries) => apply(newId(), (p) => saveBasisSet(p, newId(), name, entries)),
@@ -117,7 +136,7 @@ export function createBenchStore(project: Project): BenchStore {
 
 /** The outcome in one spoken sentence. */
 function spoken(record: SearchRecord): string {
-  if (record.outcome === 'relation') return `Search finished. Verdict: ${record.verdict}.`;
-  if (record.outcome === 'excluded') return `Search finished. Excluded below ${record.normBound}.`;
+  if (record.outcome === 'relation') return `Search finished. Relation found, verdict: ${record.verdict}.`;
+  if (record.outcome === 'excluded') return `Search finished. No relation: excluded below ${record.normBound}.`;
   return `Search finished. ${record.diagnosis[0] ?? record.outcome}`;
 }

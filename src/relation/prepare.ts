@@ -30,6 +30,8 @@ export interface Prepared {
   readonly scales: readonly number[];
   /** Right bits of column j: log2(largest |integer| / largest error), rounded down. For exact columns: bits of the largest integer. */
   readonly precisionBits: readonly number[];
+  /** Bits of the largest error of column j; 0 when exact. */
+  readonly columnErrorBits: readonly number[];
   /** Which column of `rows` each column here is. */
   readonly columns: readonly number[];
   /** The first relation that shows without a search. */
@@ -59,10 +61,10 @@ export function prepare(rows: readonly (readonly Ball[])[]): Prepared {
       (errors[i] as bigint[]).push(scaled.rad);
     });
   });
-  const precisionBits = columns.map((_, at) => {
-    const error = largest(errors.map((e) => e[at] as bigint));
-    return bitLength(largest(integers.map((x) => x[at] as bigint))) - (error === 0n ? 0 : bitLength(error));
-  });
+  const columnErrorBits = columns.map((_, at) => bitLength(largest(errors.map((e) => e[at] as bigint))));
+  const precisionBits = columns.map(
+    (_, at) => bitLength(largest(integers.map((x) => x[at] as bigint))) - (columnErrorBits[at] as number),
+  );
   const immediate = zeroNumber(rows, columns) ?? equalNumbers(rows, columns);
   if (immediate === undefined) {
     refuseVanishing(integers, errors);
@@ -73,7 +75,7 @@ export function prepare(rows: readonly (readonly Ball[])[]): Prepared {
       );
     }
   }
-  return { rows, integers, errors, scales, precisionBits, columns, immediate };
+  return { rows, integers, errors, scales, precisionBits, columnErrorBits, columns, immediate };
 }
 
 /** Whether Σ cᵢ·xᵢⱼ may be zero in every column, decided on the balls as given, exactly. */

@@ -1,11 +1,12 @@
 /** The entry point of the relation engine: one request, one run in steps, one outcome. */
 import { InputError } from '../number/errors.ts';
+import { absolute } from '../number/integer.ts';
 import { certifyNormBound, type NormBound } from './bound.ts';
 import type { RelationOutcome, RelationProgress, RelationRequest, RelationRun } from './contract.ts';
 import { latticeMethod } from './lattice-method.ts';
 import { confidence, type MethodEnd, type MethodOptions, type MethodProgress, pslqMethod } from './methods.ts';
 import { mayVanish, type Prepared, prepare, residualsOf } from './prepare.ts';
-import { digitsNeeded, primitive, SURPLUS_DIGITS, surplusDigits } from './significance.ts';
+import { digitsNeeded, errorsOf, primitive, SURPLUS_DIGITS, surplusDigits } from './significance.ts';
 
 /** Work between two looks at the clock is a few milliseconds; a step ends at the first look past this many. */
 const STEP_MILLISECONDS = 5;
@@ -77,6 +78,11 @@ function* search(
   const { iterations } = progress;
   if (end.coefficients === undefined) return negative(request, prepared, end, bound, iterations);
   const coefficients = primitive(end.coefficients);
+  const loose = undetermined(prepared, coefficients);
+  if (loose !== undefined) {
+    const reason = `A relation shows, but not the coefficient of number ${loose + 1}: that number is smaller than what the uncertainties of the others leave open.`;
+    return { kind: 'inconclusive', reason, normBoundLog10: bound.normBoundLog10, iterations };
+  }
   const confidenceLog10 = confidence(prepared, end.basis, residuals, coefficients);
   return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10: bound.normBoundLog10, iterations };
 }
@@ -96,6 +102,13 @@ function negative(
     ? 'Double precision did not suffice to reduce these numbers; the other method or other digits may decide.'
     : shortage(prepared, request.maxNormLog10 ?? 1);
   return { kind: 'inconclusive', reason, normBoundLog10, iterations };
+}
+
+/** The first number so small that the relation vanishes within the errors for more than one coefficient of it. */
+function undetermined(prepared: Prepared, coefficients: readonly bigint[]): number | undefined {
+  const allowed = errorsOf(prepared, coefficients);
+  const at = prepared.integers.findIndex((x) => x.every((value, j) => absolute(value) <= (allowed[j] as bigint)));
+  return at < 0 ? undefined : at;
 }
 
 function shortage(prepared: Prepared, maxNormLog10: number): string {

@@ -1,6 +1,6 @@
 /** Could this relation be chance? Counting arguments shared by both methods. */
-import { absolute, log10Of } from '../number/integer.ts';
-import { columnGram, log10Determinant } from './gram.ts';
+import { absolute, bitLength, log10Of } from '../number/integer.ts';
+import { addRow, columnGram, log10Determinant } from './gram.ts';
 import type { Prepared } from './prepare.ts';
 
 /**
@@ -21,26 +21,61 @@ export function log10BallVolume(n: number): number {
  * chance. Vectors of norm at most N are counted by the volume of a ball of radius² N² + n/12 (each integer point
  * carries its unit cube); their sums over the columns are taken as normal with covariance N²·x̂ᵀx̂/(n + 2), blurred by the errors E,
  * so that columns which say the same thing (real and imaginary part of one phase times real numbers, say) count once.
+ *
+ * Where c leaves out the largest numbers, chance among the smaller ones alone may be likelier, since these have fewer right digits: the
+ * count is made for every set {numbers up to some size} that contains those of c, and the largest count decides.
+ *
  * A heuristic, good to about a digit; never part of a proof. Infinity when the numbers that take part are exact: then
  * there is no chance about it.
  */
 export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[]): number {
-  const n = coefficients.length;
+  const errors = errorsOf(prepared, coefficients);
+  if (errors.every((e) => e === 0n)) return Number.POSITIVE_INFINITY;
   const square = coefficients.reduce((sum, c) => sum + c * c, 0n);
+  const rows = [...prepared.integers.keys()].sort((a, b) => sizeOf(prepared, a) - sizeOf(prepared, b));
+  const least = Math.max(...coefficients.map((c, i) => (c === 0n ? 0 : rows.indexOf(i)))) + 1;
+  const gram = columnGram(prepared, rows.slice(0, least));
+  let surplus = surplusAmong(gram, least, square, errors);
+  for (let n = least + 1; n <= rows.length; n++) {
+    addRow(gram, prepared.integers[rows[n - 1] as number] as readonly bigint[]);
+    surplus = Math.min(surplus, surplusAmong(gram, n, square, errors));
+  }
+  return surplus;
+}
+
+/** Bits of the largest entry of a row over the errors of its column. */
+function sizeOf(prepared: Prepared, i: number): number {
+  return Math.max(
+    ...(prepared.integers[i] as readonly bigint[]).map(
+      (x, j) => bitLength(x) - (prepared.columnErrorBits[j] as number),
+    ),
+  );
+}
+
+/** The surplus when n numbers with this Gram matrix of columns were offered. */
+function surplusAmong(
+  gram: readonly (readonly bigint[])[],
+  n: number,
+  square: bigint,
+  errors: readonly bigint[],
+): number {
   const normLog10 = log10Of(square) / 2;
   const widened = normLog10 > 8 ? normLog10 : Math.log10(10 ** (2 * normLog10) + n / 12) / 2;
   const vectors = log10BallVolume(n) + n * widened;
-  const errors = prepared.columns.map((_, j) =>
-    coefficients.reduce((sum, c, i) => sum + absolute(c) * (prepared.errors[i]?.[j] as bigint), 0n),
-  );
-  if (errors.every((e) => e === 0n)) return Number.POSITIVE_INFINITY;
   // Probability of |c·x̂ⱼ| ≤ Eⱼ for all j: Π 2Eⱼ over √det(2π·(covariance + E²)), times n + 2 to stay in integers.
-  const blurred = columnGram(prepared).map((row, j) =>
+  const blurred = gram.map((row, j) =>
     row.map((dot, k) => square * dot + (j === k ? BigInt(n + 2) * ((errors[j] as bigint) + 1n) ** 2n : 0n)),
   );
-  let chance = -(log10Determinant(blurred) - prepared.columns.length * Math.log10(n + 2)) / 2;
+  let chance = -(log10Determinant(blurred) - errors.length * Math.log10(n + 2)) / 2;
   for (const error of errors) chance += log10Of(error + 1n) + Math.log10(2 / Math.sqrt(2 * Math.PI));
   return -vectors - Math.min(0, chance);
+}
+
+/** Σ |cᵢ|·eᵢⱼ per column: how far from zero the sum over the integers may be for a relation of the true numbers. */
+export function errorsOf(prepared: Prepared, coefficients: readonly bigint[]): bigint[] {
+  return prepared.columns.map((_, j) =>
+    coefficients.reduce((sum, c, i) => (c === 0n ? sum : sum + absolute(c) * (prepared.errors[i]?.[j] as bigint)), 0n),
+  );
 }
 
 /** Whether residuals of the given coefficients are all within what the errors of the numbers allow. */
@@ -49,14 +84,8 @@ export function withinErrors(
   coefficients: readonly bigint[],
   residuals: readonly bigint[],
 ): boolean {
-  return residuals.every((y, j) => {
-    if (y === 0n) return true;
-    let allowed = 0n;
-    coefficients.forEach((c, k) => {
-      if (c !== 0n) allowed += absolute(c) * (prepared.errors[k]?.[j] as bigint);
-    });
-    return absolute(y) <= allowed;
-  });
+  const allowed = errorsOf(prepared, coefficients);
+  return residuals.every((y, j) => absolute(y) <= (allowed[j] as bigint));
 }
 
 export function log10Norm(coefficients: readonly bigint[]): number {

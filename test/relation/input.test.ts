@@ -136,6 +136,20 @@ describe.each(METHODS)('absolute size and gaps of size do not matter (%s)', (met
   });
 });
 
+describe.each(METHODS)('chance among small numbers (%s)', (method) => {
+  it('is not taken for a relation when larger numbers with more right digits are offered too', () => {
+    const random = randomFrom('chance among the small');
+    for (let k = 0; k < 40; k++) {
+      const bits = random.integer(100, 500);
+      // One or two numbers of full size, the others so small that few of their digits are right.
+      const rows = randomNumbers(random, random.integer(4, 9), bits).map((x, i) => [
+        i < 1 + (k % 2) ? x : { ...x, mid: x.mid >> BigInt(Math.floor(bits * 0.6)) },
+      ]);
+      expect(run({ rows, method }).kind).not.toBe('relation');
+    }
+  });
+});
+
 describe.each(METHODS)('digits that do not suffice (%s)', (method) => {
   const search = searchBy(method);
   it('a limit that the digits cannot reach is inconclusive and says how many are needed', () => {

@@ -18,19 +18,28 @@ export function roundShift(value: bigint, shift: number): bigint {
   return ((value >> BigInt(shift - 1)) + 1n) >> 1n;
 }
 
-/** ⌊√value⌋ for value ≥ 0, by Newton's iteration on doubling precision (Zimmermann, "Karatsuba square root", 1999, in spirit). */
+/** ⌊√value⌋ for value ≥ 0: Zimmermann, "Karatsuba square root", INRIA research report 3805 (1999). */
 export function integerSqrt(value: bigint): bigint {
   if (value < 0n) throw new RangeError('integerSqrt: expected a non-negative integer');
-  if (value < 0x10000000000000n) return BigInt(Math.floor(Math.sqrt(Number(value))));
   const length = bitLength(value);
-  const drop = (length >> 2) & ~1;
-  const guess = (integerSqrt(value >> BigInt(drop * 2)) + 1n) << BigInt(drop);
-  let root = guess;
-  for (;;) {
-    const next = (root + value / root) >> 1n;
-    if (next >= root) return root;
-    root = next;
+  return squareRootWithRest(value, length + (length & 1)).root;
+}
+
+/** ⌊√value⌋ and value − ⌊√value⌋², for a value of `length` bits or one less, `length` even. */
+function squareRootWithRest(value: bigint, length: number): { root: bigint; rest: bigint } {
+  if (length <= 50) {
+    const root = BigInt(Math.floor(Math.sqrt(Number(value))));
+    return { root, rest: value - root * root };
   }
+  const quarter = BigInt(length >> 2);
+  const mask = (1n << quarter) - 1n;
+  const high = squareRootWithRest(value >> (2n * quarter), length - 2 * (length >> 2));
+  const dividend = (high.rest << quarter) | ((value >> quarter) & mask);
+  const divisor = 2n * high.root;
+  const quotient = dividend / divisor;
+  const root = (high.root << quarter) + quotient;
+  const rest = ((dividend - quotient * divisor) << quarter) + (value & mask) - quotient * quotient;
+  return rest < 0n ? { root: root - 1n, rest: rest + 2n * root - 1n } : { root, rest };
 }
 
 export function gcd(a: bigint, b: bigint): bigint {

@@ -3,11 +3,11 @@
 import { readFileSync } from 'node:fs';
 import { parseArgs } from 'node:util';
 import { InputError } from '../number/errors.ts';
+import { catalogue } from '../search/catalogue.ts';
 import { checkRecord } from '../search/check.ts';
 import type { SearchRequest } from '../search/request.ts';
 import { runSearch } from '../search/run.ts';
 import { evaluateToDigits } from '../worker/tasks.ts';
-import { catalogue } from './catalogue.ts';
 
 const USAGE = `usage:
   digit-assay search REQUEST.json|-             one record

@@ -1,4 +1,5 @@
 /** The worker's shell in a browser. */
+import { browserConstants } from './browser-constants.ts';
 import { createHandler } from './handler.ts';
 import type { FromWorker, ToWorker } from './messages.ts';
 
@@ -8,5 +9,5 @@ interface WorkerScope {
 }
 
 const scope = globalThis as unknown as WorkerScope;
-const handle = createHandler((message) => scope.postMessage(message));
+const handle = createHandler((message) => scope.postMessage(message), browserConstants());
 scope.onmessage = (event) => handle(event.data);

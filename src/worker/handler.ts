@@ -3,13 +3,15 @@
  * (long tasks give the event loop a turn) and a waiting one before it starts.
  */
 import { ConstantCache } from '../constants/cache.ts';
+import type { ConstantStore } from './constant-store.ts';
+import { recallTerms } from './constant-store.ts';
 import { AbortError, toErrorData } from './errors.ts';
 import type { FromWorker, ToWorker } from './messages.ts';
-import { tasks } from './tasks.ts';
+import { tasks, termsOf } from './tasks.ts';
 
-/** Returns the function that takes incoming messages; answers go through `send`. */
-export function createHandler(send: (message: FromWorker) => void): (message: ToWorker) => void {
-  const cache = new ConstantCache();
+/** Returns the function that takes incoming messages; answers go through `send`. With a `store`, constants are computed once for all sessions. */
+export function createHandler(send: (message: FromWorker) => void, store?: ConstantStore): (message: ToWorker) => void {
+  const cache = new ConstantCache((entry) => store?.keep(entry));
   const controllers = new Map<number, AbortController>();
   let last: Promise<void> = Promise.resolve();
 
@@ -19,6 +21,8 @@ export function createHandler(send: (message: FromWorker) => void): (message: To
       signal.throwIfAborted();
       const work = tasks[task] as (request: unknown, context: unknown) => Promise<unknown>;
       if (work === undefined) throw new RangeError(`createHandler: expected a task name, got ${task}`);
+      if (store !== undefined) await recallTerms(termsOf(task, request), cache, store);
+      signal.throwIfAborted();
       const response = await work(request, {
         signal,
         cache,

@@ -1,6 +1,8 @@
 /** The one list of what a page (or a Node parent) can ask of an engine worker. Both ends are checked against it. */
+import type { Catalogue } from '../search/catalogue.ts';
 import type { SearchProgress, SearchRecord } from '../search/record.ts';
 import type { BasisSpec, SearchRequest } from '../search/request.ts';
+import type { Rewritten } from '../search/rewrite.ts';
 
 export interface ParsedValue {
   /** Canonical decimal text, or the two parts of a complex number. */
@@ -28,6 +30,10 @@ export interface EngineTasks {
   };
   /** Check typed constants and expand spaces without computing digits. */
   basis: { request: { basis: BasisSpec }; response: { elements: readonly BasisElementView[] }; progress: never };
+  /** Families, their listed constants, and spaces. */
+  catalogue: { request: Record<string, never>; response: Catalogue; progress: never };
+  /** A typed constant written exactly in the elements of a space. */
+  rewrite: { request: { text: string; space: string }; response: Rewritten; progress: never };
   /** Recompute a record from itself alone. */
   check: {
     request: { record: unknown };

@@ -1,13 +1,17 @@
 /** What each task does; importable without a worker. */
 import type { ConstantCache } from '../constants/cache.ts';
 import { evaluateTerm, weightOf } from '../constants/evaluate.ts';
+import type { Term } from '../constants/term.ts';
 import { toLatex } from '../expression/print-latex.ts';
 import { type Ball, magnitude } from '../number/ball.ts';
 import { isComplex, type Value } from '../number/complex.ts';
 import { formatBall } from '../number/decimal.ts';
 import { InputError, PrecisionError } from '../number/errors.ts';
 import { readTyped, resolveBasis } from '../search/basis.ts';
+import { catalogue } from '../search/catalogue.ts';
 import { checkRecord } from '../search/check.ts';
+import type { SearchRequest } from '../search/request.ts';
+import { rewrite } from '../search/rewrite.ts';
 import { runSearch } from '../search/run.ts';
 import type { EngineTasks, TaskName } from './messages.ts';
 
@@ -76,5 +80,21 @@ export const tasks: Tasks = {
   basis: async ({ basis }) => ({
     elements: resolveBasis(basis).map(({ text, latex, weight, family }) => ({ text, latex, weight, family })),
   }),
+  catalogue: async () => catalogue(),
+  rewrite: async ({ text, space }) => rewrite(text, space),
   check: ({ record }, { signal, onProgress, cache }) => checkRecord(record, { signal, onProgress, cache }),
 };
+
+/** The terms whose constants a task will need; empty for a request that is wrong (the task itself says how). */
+export function termsOf(task: TaskName, request: unknown): Term[] {
+  try {
+    if (task === 'evaluate') return [readTyped((request as EngineTasks['evaluate']['request']).text)];
+    if (task !== 'search') return [];
+    const { basis, divideBy } = request as SearchRequest;
+    const elements = basis === undefined ? [] : resolveBasis(basis);
+    const terms = elements.flatMap(({ source }) => ('term' in source ? [source.term] : []));
+    return divideBy === undefined ? terms : [...terms, readTyped(divideBy)];
+  } catch {
+    return [];
+  }
+}

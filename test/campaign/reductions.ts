@@ -7,8 +7,9 @@
  * are compared instead of replaced.
  */
 import { readFileSync, writeFileSync } from 'node:fs';
-import { REAL_STEP, realTails, tailsSize } from '../../src/constants/sums/double-tails.ts';
+import { REAL_STEP, tailsSize } from '../../src/constants/sums/double-tails.ts';
 import { planWords } from '../../src/constants/sums/plan.ts';
+import { realTails } from '../../src/constants/sums/real-tails.ts';
 import { rootSymmetry } from '../../src/constants/sums/words.ts';
 import { bitLength, roundShift } from '../../src/number/integer.ts';
 import { productsOf } from '../../src/spaces/products.ts';

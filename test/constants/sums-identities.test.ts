@@ -1,8 +1,9 @@
 /** Nested sums against identities that their computation does not use. */
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { REAL_STEP, realTails, tailsSize } from '../../src/constants/sums/double-tails.ts';
+import { REAL_STEP, tailsSize } from '../../src/constants/sums/double-tails.ts';
 import { planWords } from '../../src/constants/sums/plan.ts';
+import { realTails } from '../../src/constants/sums/real-tails.ts';
 import { evaluateRootSums, type RootSum } from '../../src/constants/sums/root-words.ts';
 import { contains, fromInteger, overlaps } from '../../src/number/ball.ts';
 import { add, multiply, subtract, toComplex, type Value } from '../../src/number/complex.ts';

@@ -2,17 +2,10 @@
 import { add, type Ball, fromInteger, multiply, negate, sqrt, timesPowerOfTwo, withBits } from '../../number/ball.ts';
 import type { ComplexBall, Value } from '../../number/complex.ts';
 import type { EvaluationContext } from '../family.ts';
-import {
-  eisenstein,
-  gaussian,
-  PAIR_STEP,
-  type PairRing,
-  pairTails,
-  REAL_STEP,
-  realTails,
-  tailsSize,
-} from './double-tails.ts';
+import { PAIR_STEP, REAL_STEP, tailsSize } from './double-tails.ts';
+import { eisenstein, gaussian, type PairRing, pairTails } from './pair-tails.ts';
 import { type Plan, planWords } from './plan.ts';
+import { realTails } from './real-tails.ts';
 import { type RingOrder, ringSize, ringTails } from './ring-tails.ts';
 import { rootSymmetry, wordAtRoots } from './words.ts';
 

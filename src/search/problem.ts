@@ -49,7 +49,7 @@ export function prepareProblem(
   const elements = resolveBasis(request.basis);
   const columns = value.parts.length;
   const context = { cache: options.cache, signal: options.signal, onProgress };
-  const bits = Math.max(64, Math.ceil((value.written - value.leadExponent) * LOG2_10)) + GUARD_BITS;
+  const bits = constantBits(value);
   const divisor = request.divideBy === undefined ? null : divisorValue(request.divideBy, bits + 64, options);
   const believe = (digits: number): Ball[] => {
     const parts = believing(value, digits);
@@ -77,6 +77,11 @@ export function prepareProblem(
     method: request.method ?? 'pslq',
     present: (integers) => relationRecord(elements, integers, request.divideBy),
   };
+}
+
+/** Fraction bits to which the constants of a search are computed: the last written place of the value, and guard bits. */
+export function constantBits(value: ReadValue): number {
+  return Math.max(64, Math.ceil((value.written - value.leadExponent) * LOG2_10)) + GUARD_BITS;
 }
 
 function divisorValue(text: string, bits: number, options: SearchOptions): Value {

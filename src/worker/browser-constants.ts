@@ -9,9 +9,10 @@ interface Schema extends DBSchema {
 }
 
 /** Values of fewer bits are quicker computed than fetched. */
-const LEAST_BITS = 600;
+export const LEAST_BITS = 600;
 
 export function browserConstants(): ConstantStore {
+  let writing: Promise<void> = Promise.resolve();
   let opening: Promise<IDBPDatabase<Schema> | undefined> | undefined;
   const open = (): Promise<IDBPDatabase<Schema> | undefined> => {
     opening ??= openDB<Schema>(`digit-assay-constants-${ENGINE_VERSION}`, 1, {
@@ -33,9 +34,11 @@ export function browserConstants(): ConstantStore {
         return [];
       }
     },
+    settled: () => writing,
     keep(entry) {
       if (entry.bits < LEAST_BITS) return;
-      open()
+      writing = writing
+        .then(open)
         .then(async (db) => {
           if (db === undefined) return;
           const transaction = db.transaction('constants', 'readwrite');

@@ -9,14 +9,23 @@ export interface ConstantStore {
   recall(texts: readonly string[]): Promise<readonly CachedConstant[]>;
   /** Keeps the entry if it is longer than the stored one; in its own time. */
   keep(entry: CachedConstant): void;
+  /** Resolves once everything kept so far is stored. */
+  settled(): Promise<void>;
 }
 
 /** Fills the cache with what the store knows of the atoms of these terms. */
 export async function recallTerms(terms: readonly Term[], cache: ConstantCache, store: ConstantStore): Promise<void> {
-  const texts = new Set<string>();
+  for (const entry of await store.recall([...membersOf(terms).keys()])) cache.load(entry);
+}
+
+/** The constants that terms are built of, by canonical text, grouped by family in the order of the terms. */
+export function membersOf(terms: readonly Term[]): Map<string, Term> {
+  const byFamily = new Map<string, Map<string, Term>>();
   for (const atom of terms.flatMap(atomsOf)) {
     const { family, args } = familyOf(atom);
-    texts.add(family.text(args));
+    const group = byFamily.get(family.key) ?? new Map<string, Term>();
+    group.set(family.text(args), atom);
+    byFamily.set(family.key, group);
   }
-  for (const entry of await store.recall([...texts])) cache.load(entry);
+  return new Map([...byFamily.values()].flatMap((group) => [...group]));
 }

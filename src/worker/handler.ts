@@ -26,6 +26,7 @@ export function createHandler(send: (message: FromWorker) => void, store?: Const
       const response = await work(request, {
         signal,
         cache,
+        store,
         onProgress: (progress: unknown) => send({ kind: 'progress', id, progress }),
       });
       send({ kind: 'done', id, response });

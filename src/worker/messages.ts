@@ -34,6 +34,12 @@ export interface EngineTasks {
   catalogue: { request: Record<string, never>; response: Catalogue; progress: never };
   /** A typed constant written exactly in the elements of a space. */
   rewrite: { request: { text: string; space: string }; response: Rewritten; progress: never };
+  /** Compute part `part` of `parts` of the constants of a search and store them; does nothing without a store. */
+  compute: {
+    request: { search: SearchRequest; part: number; parts: number };
+    response: { computed: number };
+    progress: { fraction: number };
+  };
   /** Recompute a record from itself alone. */
   check: {
     request: { record: unknown };

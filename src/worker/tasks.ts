@@ -1,6 +1,6 @@
 /** What each task does; importable without a worker. */
 import type { ConstantCache } from '../constants/cache.ts';
-import { evaluateTerm, weightOf } from '../constants/evaluate.ts';
+import { evaluateMany, evaluateTerm, weightOf } from '../constants/evaluate.ts';
 import type { Term } from '../constants/term.ts';
 import { toLatex } from '../expression/print-latex.ts';
 import { type Ball, magnitude } from '../number/ball.ts';
@@ -10,15 +10,19 @@ import { InputError, PrecisionError } from '../number/errors.ts';
 import { readTyped, resolveBasis } from '../search/basis.ts';
 import { catalogue } from '../search/catalogue.ts';
 import { checkRecord } from '../search/check.ts';
+import { readValue } from '../search/intake.ts';
+import { constantBits, GUARD_BITS } from '../search/problem.ts';
 import type { SearchRequest } from '../search/request.ts';
 import { rewrite } from '../search/rewrite.ts';
 import { runSearch } from '../search/run.ts';
+import { type ConstantStore, membersOf } from './constant-store.ts';
 import type { EngineTasks, TaskName } from './messages.ts';
 
 export interface TaskContext<K extends TaskName> {
   readonly signal: AbortSignal;
   readonly onProgress: (progress: EngineTasks[K]['progress']) => void;
   readonly cache: ConstantCache;
+  readonly store?: ConstantStore | undefined;
 }
 
 type Tasks = {
@@ -81,6 +85,15 @@ export const tasks: Tasks = {
     elements: resolveBasis(basis).map(({ text, latex, weight, family }) => ({ text, latex, weight, family })),
   }),
   catalogue: async () => catalogue(),
+  compute: async ({ search, part, parts }, { signal, onProgress, cache, store }) => {
+    if (store === undefined) return { computed: 0 };
+    const share = [...membersOf(termsOf('search', search)).values()].filter((_, k) => k % parts === part);
+    // One guard more than the search asks for, so that products of these constants are served as well.
+    const bits = constantBits(readValue(search)) + GUARD_BITS;
+    evaluateMany(share, bits, { cache, signal, onProgress: (fraction) => onProgress({ fraction }) });
+    await store.settled();
+    return { computed: share.length };
+  },
   rewrite: async ({ text, space }) => rewrite(text, space),
   check: ({ record }, { signal, onProgress, cache }) => checkRecord(record, { signal, onProgress, cache }),
 };

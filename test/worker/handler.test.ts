@@ -28,6 +28,7 @@ describe('the worker’s handler', () => {
     const store = {
       recall: async (texts: readonly string[]) => texts.flatMap((t) => kept.get(t) ?? []),
       keep: (entry: CachedConstant) => void kept.set(entry.text, entry),
+      settled: async () => undefined,
     };
     const first: FromWorker[] = [];
     const one = createHandler((m) => first.push(m), store);
@@ -42,6 +43,34 @@ describe('the worker’s handler', () => {
     expect(await ask(two, second, 1, 'evaluate', { text: 'zeta(5)', digits: 10 })).toMatchObject({
       response: { digits: '1.500000000' },
     });
+  });
+
+  it('two workers share the constants of one search, and the search then computes none', async () => {
+    const kept = new Map<string, CachedConstant>();
+    const computedBy: string[][] = [[], [], []];
+    const storeOf = (worker: number) => ({
+      recall: async (texts: readonly string[]) => texts.flatMap((t) => kept.get(t) ?? []),
+      keep: (entry: CachedConstant) => {
+        computedBy[worker]?.push(entry.text);
+        kept.set(entry.text, entry);
+      },
+      settled: async () => undefined,
+    });
+    const digits =
+      '0.13434353866061472157049648360403223703627144755928803185358578479596323614010234482358150531653179963316';
+    const search = { value: digits, basis: { space: 'alternating', weight: 6, lower: true } };
+    for (const part of [0, 1]) {
+      const answers: FromWorker[] = [];
+      const handle = createHandler((m) => answers.push(m), storeOf(part));
+      expect(await ask(handle, answers, 1, 'compute', { search, part, parts: 2 })).toMatchObject({ kind: 'done' });
+    }
+    const shares = computedBy.map((list) => new Set(list));
+    expect(shares[0]?.size).toBeGreaterThan(2);
+    expect(Math.abs((shares[0]?.size ?? 0) - (shares[1]?.size ?? 0))).toBeLessThan(4);
+    const answers: FromWorker[] = [];
+    const handle = createHandler((m) => answers.push(m), storeOf(2));
+    expect(await ask(handle, answers, 1, 'search', search)).toMatchObject({ kind: 'done' });
+    expect(computedBy[2]).toEqual([]);
   });
 
   it('says what is wrong, and takes the next task', async () => {

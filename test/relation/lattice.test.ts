@@ -35,6 +35,10 @@ function planted(random: Random, n: number, m: number, digits: number, bits: num
   }
 }
 
+function normLog10(vector: readonly bigint[]): number {
+  return Math.log10(Number(vector.reduce((sum, c) => sum + c * c, 0n))) / 2;
+}
+
 function same(found: readonly bigint[] | null, planted: readonly bigint[]): boolean {
   if (found === null) return false;
   let content = 0n;
@@ -132,6 +136,45 @@ describe('planted relations', () => {
     const { integers, relation } = planted(random, 8, 2, 5, 300);
     const scaled = integers.map((row) => [row[0] as bigint, (row[1] as bigint) >> 180n]);
     expect(same(finish({ integers: scaled, errors: scaled.map(() => [1n, 2n]) }).candidate, relation)).toBe(true);
+  });
+});
+
+describe('few digits', () => {
+  it('relations are found from 1.03 times the information limit on', () => {
+    const random = randomFrom('lattice few digits');
+    for (const [n, height] of [
+      [12, 6],
+      [30, 4],
+      [60, 3],
+      [100, 2],
+      [100, 5],
+    ] as const) {
+      const bits = bitsOf(n * (height + 1.2));
+      const { integers, relation } = planted(random, n, 1, height, bits);
+      const norm = normLog10(relation);
+      const offered = 1.03 * n * norm;
+      expect(bits).toBeGreaterThan(bitsOf(offered));
+      const scaled = integers.map((row) => row.map((x) => x >> BigInt(bits - bitsOf(offered))));
+      const result = finish({ integers: scaled, accept: (c) => n * normLog10(c) < offered });
+      const found =
+        same(result.candidate, relation) || (result.candidate !== null && normLog10(result.candidate) <= norm);
+      expect(found, `n = ${n}, ${height} digits`).toBe(true);
+      expectUnimodular(result.basis(), n);
+    }
+  });
+
+  it('the bound at the end is within 1.017^n of what any basis could give', () => {
+    const random = randomFrom('lattice strong');
+    const n = 90;
+    const bits = 900;
+    const integers = Array.from({ length: n }, () => [random.bits(bits)]);
+    const result = finish({ integers, accept: () => false });
+    expect(result.kind).toBe('exhausted');
+    expectUnimodular(result.basis(), n);
+    // Errors of n units cost the bound a factor √(1 + n/4^weightBits).
+    const best = (result.fedBits * Math.log10(2)) / n;
+    expect(result.floatNormBoundLog10).toBeGreaterThan(best - n * Math.log10(1.017));
+    expect(result.floatNormBoundLog10).toBeLessThan(best + 0.1);
   });
 });
 

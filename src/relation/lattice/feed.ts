@@ -8,6 +8,7 @@ export interface Profile {
   readonly drop: number;
   readonly least: number;
   readonly largest: number;
+  readonly first: number;
   /** Σ log2 l_ii. */
   readonly sum: number;
 }
@@ -26,7 +27,7 @@ export function profile(state: LatticeState): Profile {
     if (x < least) least = x;
     if (largest - x > drop) drop = largest - x;
   }
-  return { drop, least, largest, sum };
+  return { drop, least, largest, first: Math.log2(f[l] as number), sum };
 }
 
 const parts: [number, number] = [0, 0];

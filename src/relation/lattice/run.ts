@@ -9,13 +9,14 @@
  */
 import { absolute, bitLength } from '../../number/integer.ts';
 import { type Checksum, checksumOf } from './checksum.ts';
+import { tour } from './enumerate.ts';
 import { bitsToFeed, feed, type Profile, profile, residualBits } from './feed.ts';
 import { applyToWindow, flush, rowSums, undoFlush } from './flush.ts';
 import { type Arranged, arrange, type Cluster, clusters, JOIN_GAP, type Parked, parkFrom } from './groups.ts';
 import type { Kernels } from './kernels/contract.ts';
 import { timesPowerOfTwo } from './limbs.ts';
 import { refresh, rescale } from './refresh.ts';
-import { type ExactRow, exactRow, type LatticeState, loadRows, newState, windowErrorBits } from './state.ts';
+import { type ExactRow, exactRow, identity, type LatticeState, loadRows, newState, windowErrorBits } from './state.ts';
 import { type SweepShape, sweep } from './sweep.ts';
 
 export interface SearchInput {
@@ -74,6 +75,14 @@ const BLIND_STAGES = 8;
 const NORM_MARGIN = 0.04;
 /** Lovász factor. */
 const DELTA = 0.99;
+/** Block size of the tours at the end, and the nodes all enumerations together may visit: about a second's work. */
+const BLOCK = 22;
+const ENUMERATION_NODES = 2e7;
+/** The rows are tested again when the first became shorter by this many bits. */
+const SHORTER = 0.3;
+/** So many tours in a row that do not bring the ends of the profile together by FLATTER bits are the last. */
+const IDLE_TOURS = 6;
+const FLATTER = 0.1;
 /** Sweeps after the last bit is fed. */
 const MAX_FINAL_SWEEPS = 200;
 
@@ -88,7 +97,7 @@ export class LatticeSearch {
   /** Undefined when the active rows do not span a coordinate lattice; then drift only shows at a refresh. */
   private checksum: Checksum | undefined;
   private range = RANGE;
-  private shape: Profile = { drop: 0, least: 0, largest: 0, sum: 0 };
+  private shape: Profile = { drop: 0, least: 0, largest: 0, first: 0, sum: 0 };
   /** A smallest residual that failed the exact test; only one much smaller is worth another before the next flush. */
   private tested = Number.POSITIVE_INFINITY;
   private readonly residuals: Float64Array;
@@ -235,22 +244,22 @@ export class LatticeSearch {
     this.measureResiduals();
     const sizes = this.residuals.slice(0, this.state.active).sort();
     const smallest = sizes[0] as number;
-    const second = sizes.length > 1 ? (sizes[1] as number) : this.state.e;
-    return smallest < second - GAP_TO_TEST && smallest < this.tested - GAP_TO_TEST;
+    if (!(smallest < this.tested - GAP_TO_TEST)) return false;
+    // Several relations may show together: the gap is sought anywhere.
+    return sizes.some((size, k) => size < (sizes[k + 1] ?? this.state.e) - GAP_TO_TEST);
   }
 
-  /** One sweep, applied exactly. False when double precision fails for good. */
-  private *reduceOnce(before: number): Generator<void, boolean, void> {
+  /** One sweep, applied exactly; `reach` as for `sweep` when U is not to begin as the identity. False when double precision fails for good. */
+  private *reduceOnce(before: number, reach?: number): Generator<void, boolean, void> {
     const { state, progress } = this;
     const { kernels, stride, active } = state;
     progress.iterations++;
-    const shape = sweepShape(active);
-    sweep(state, shape);
-    const { sum, largest } = rowSums(kernels.view(), state.u, stride, active, shape.width + 1);
+    if (reach === undefined) identity(kernels.view(), state.u, stride, active);
+    const band = sweep(state, sweepShape(active), reach ?? 0);
+    const { sum, largest } = rowSums(kernels.view(), state.u, stride, active, band);
     if (!(sum < 2 ** 50)) return yield* this.abandonStage(before);
     if (state.transformBits + Math.log2(sum) > TRANSFORM_BITS) this.measureTransform();
     if (state.transformBits + Math.log2(sum) > TRANSFORM_BITS) yield* this.flushRows(before);
-    const band = shape.width + 1;
     applyToWindow(state, sum, band);
     if (state.transformBits === 0) kernels.view().copyWithin(state.transform, state.u, state.u + active * stride);
     else {
@@ -350,8 +359,28 @@ export class LatticeSearch {
     }
     if (!(yield* this.settle())) return this.end('unstable');
     progress.fraction = 1;
-    progress.floatNormBoundLog2 = Math.max(progress.floatNormBoundLog2, this.floatBound());
-    return this.testExact() ?? this.end('exhausted');
+    return this.testExact() ?? (yield* this.strengthen());
+  }
+
+  /** Tours of block reduction until one changes nothing, a relation shows, or the nodes allowed are spent. */
+  private *strengthen(): Generator<void, SearchEnd, void> {
+    const { state } = this;
+    let best = Number.POSITIVE_INFINITY;
+    for (let nodes = 0, idle = 0; nodes < ENUMERATION_NODES && idle < IDLE_TOURS; idle++) {
+      const done = yield* tour(state, BLOCK, DELTA);
+      nodes += done.nodes;
+      if (done.insertions === 0) break;
+      const first = this.shape.first;
+      if (!(yield* this.reduceOnce(state.e, done.reach))) return this.end('unstable');
+      yield;
+      const slope = this.shape.first - this.shape.least;
+      if (slope < best - FLATTER) [best, idle] = [slope, -1];
+      if (this.shape.first > first - SHORTER) continue;
+      if (!(yield* this.settle())) return this.end('unstable');
+      const found = this.testExact();
+      if (found !== undefined) return found;
+    }
+    return (yield* this.settle()) ? (this.testExact() ?? this.end('exhausted')) : this.end('unstable');
   }
 
   /** Σ (n − i)·log2 l_ii, which every swap of LLL lowers. */

@@ -6,7 +6,15 @@ import type { RelationOutcome, RelationProgress, RelationRequest, RelationRun } 
 import { latticeMethod } from './lattice-method.ts';
 import { confidence, type MethodEnd, type MethodOptions, type MethodProgress, pslqMethod } from './methods.ts';
 import { mayVanish, type Prepared, prepare, residualsOf } from './prepare.ts';
-import { digitsNeeded, errorsOf, primitive, SURPLUS_DIGITS, surplusDigits } from './significance.ts';
+import {
+  digitsNeeded,
+  errorsOf,
+  log10Norm,
+  primitive,
+  SURPLUS_DIGITS,
+  surplusDigits,
+  withinErrors,
+} from './significance.ts';
 
 /** Work between two looks at the clock is a few milliseconds; a step ends at the first look past this many. */
 const STEP_MILLISECONDS = 5;
@@ -78,9 +86,9 @@ function* search(
   const { iterations } = progress;
   if (end.coefficients === undefined) return negative(request, prepared, end, bound, iterations);
   const coefficients = primitive(end.coefficients);
-  const loose = undetermined(prepared, coefficients);
+  const loose = undetermined(prepared, coefficients, end, residuals);
   if (loose !== undefined) {
-    const reason = `A relation shows, but not the coefficient of number ${loose + 1}: that number is smaller than what the uncertainties of the others leave open.`;
+    const reason = `A relation shows, but its coefficients are not fixed: number ${loose + 1} is too small for what the uncertainties of the others leave open.`;
     return { kind: 'inconclusive', reason, normBoundLog10: bound.normBoundLog10, iterations };
   }
   const confidenceLog10 = confidence(prepared, end.basis, residuals, coefficients);
@@ -104,11 +112,32 @@ function negative(
   return { kind: 'inconclusive', reason, normBoundLog10, iterations };
 }
 
-/** The first number so small that the relation vanishes within the errors for more than one coefficient of it. */
-function undetermined(prepared: Prepared, coefficients: readonly bigint[]): number | undefined {
+/**
+ * A number whose coefficient the digits do not fix, if there is one: it is itself below what the errors leave open in the relation, or
+ * it takes part in a vector no longer than the relation that can be added to it, and is no relation itself.
+ */
+function undetermined(
+  prepared: Prepared,
+  coefficients: readonly bigint[],
+  end: MethodEnd,
+  residuals: readonly (readonly bigint[])[],
+): number | undefined {
   const allowed = errorsOf(prepared, coefficients);
-  const at = prepared.integers.findIndex((x) => x.every((value, j) => absolute(value) <= (allowed[j] as bigint)));
-  return at < 0 ? undefined : at;
+  const small = prepared.integers.findIndex((x) => x.every((value, j) => absolute(value) <= (allowed[j] as bigint)));
+  if (small >= 0) return small;
+  const norm = log10Norm(coefficients);
+  const own = residualsOf(prepared, coefficients);
+  const fits = (sign: bigint, row: readonly bigint[], y: readonly bigint[]): boolean => {
+    const sum = coefficients.map((c, k) => c + sign * (row[k] as bigint));
+    const residual = own.map((r, j) => r + sign * (y[j] as bigint));
+    return sum.some((c) => c !== 0n) && withinErrors(prepared, sum, residual);
+  };
+  const loose = end.basis.find((row, i) => {
+    const y = residuals[i] as readonly bigint[];
+    if (log10Norm(row) > norm || !(fits(1n, row, y) || fits(-1n, row, y))) return false;
+    return !withinErrors(prepared, row, y) || surplusDigits(prepared, row) < SURPLUS_DIGITS;
+  });
+  return loose?.findIndex((c) => c !== 0n);
 }
 
 function shortage(prepared: Prepared, maxNormLog10: number): string {

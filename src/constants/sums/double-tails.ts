@@ -118,6 +118,13 @@ export function gatherBracket(core: Core, plan: Plan, single: number): Bracket {
   return { exponent, terms: [...terms.values()] };
 }
 
+/** sum + factor·x, without a product for the factors that are common. */
+export function addMultiple(sum: bigint, factor: number, x: bigint): bigint {
+  if (factor === 1) return sum + x;
+  if (factor === -1) return sum - x;
+  return factor === 0 ? sum : sum + BigInt(factor) * x;
+}
+
 /** polynomial(n)·x. */
 export function timesPolynomial(polynomial: readonly number[], n: number, x: bigint): bigint {
   let value = 0;

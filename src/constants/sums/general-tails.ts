@@ -20,7 +20,7 @@ import { type Ball, fromInteger, subtract, withBits } from '../../number/ball.ts
 import { type ComplexBall, divide, isComplex, multiply, toComplex, type Value } from '../../number/complex.ts';
 import { absolute } from '../../number/integer.ts';
 import type { EvaluationContext } from '../family.ts';
-import { centralInverses, powersOf, pulse } from './double-tails.ts';
+import { addMultiple, centralInverses, powersOf, pulse } from './double-tails.ts';
 import { type GeneralSize, generalSize, type Letters, type Rational } from './general-size.ts';
 import type { Plan } from './plan.ts';
 
@@ -53,6 +53,7 @@ export function generalTails(
   const im = cores.map(() => 0n);
   const shareRe = quotients.map(() => 0n);
   const shareIm = quotients.map(() => 0n);
+  const isReal = factors.every(({ product, single }) => product.im === 0n && (single === null || single.im === 0n));
   let current = factors;
   let precision = top;
   for (let n = size.steps; n >= 1; n--) {
@@ -77,7 +78,7 @@ export function generalTails(
       if (core < 0) shareRe[q] = (empty[n] as bigint) / divisor;
       else {
         shareRe[q] = (re[core] as bigint) / divisor;
-        shareIm[q] = (im[core] as bigint) / divisor;
+        if (!isReal) shareIm[q] = (im[core] as bigint) / divisor;
       }
     }
     for (let c = 0; c < cores.length; c++) {
@@ -88,14 +89,21 @@ export function generalTails(
       if (single !== null) {
         const share = shareRe[(references[0] as { quotient: number }).quotient] as bigint;
         x -= share;
+        if (isReal) {
+          re[c] = scaled(x * product.re + share * single.re, shift, denominator);
+          continue;
+        }
         re[c] = scaled(x * product.re - y * product.im + share * single.re, shift, denominator);
         im[c] = scaled(x * product.im + y * product.re + share * single.im, shift, denominator);
         continue;
       }
       for (const { quotient, factor, conjugate } of references) {
-        const f = BigInt(factor);
-        x += f * (shareRe[quotient] as bigint);
-        y += (conjugate ? -f : f) * (shareIm[quotient] as bigint);
+        x = addMultiple(x, factor, shareRe[quotient] as bigint);
+        if (!isReal) y = addMultiple(y, conjugate ? -factor : factor, shareIm[quotient] as bigint);
+      }
+      if (isReal) {
+        re[c] = scaled(x * product.re, shift, denominator);
+        continue;
       }
       re[c] = scaled(x * product.re - y * product.im, shift, denominator);
       im[c] = scaled(x * product.im + y * product.re, shift, denominator);

@@ -178,7 +178,7 @@ export const multiplePolylogarithms: Family<HyperlogArgs> = {
   names: ['G'],
   parse: parseG,
   definition:
-    'G(a_1,\\dots,a_n;z)=\\int_0^z\\frac{dt}{t-a_1}\\,G(a_2,\\dots,a_n;t),\\quad G(0,\\dots,0;z)=\\tfrac{\\log^n z}{n!}',
+    'G(a_1,\\dots,a_n;z)=\\int_0^z\\frac{dt}{t-a_1}\\,G(a_2,\\dots,a_n;t)\\text{ on the straight path},\\quad G(0,\\dots,0;z)=\\tfrac{\\log^n z}{n!}',
   source: `Definition: Goncharov, Math. Res. Lett. 5 (1998) 497; Vollinga and Weinzierl, Comput. Phys. Commun. 167 (2005) 177. ${SOURCE_METHOD}`,
   examples: ['G(0,1,r6;1/2)', 'G(0,r6,1;1)', 'G(0,2,3;1)', 'G(0,sqrt(2),-1;1)'],
 };

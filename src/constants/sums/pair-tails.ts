@@ -2,6 +2,7 @@
 import { gcdOf } from '../../number/integer.ts';
 import type { EvaluationContext } from '../family.ts';
 import {
+  addMultiple,
   type Bracket,
   centralInverses,
   gatherBracket,
@@ -123,12 +124,6 @@ function singleFactor(core: Core, ring: PairRing): Pair | null {
   if (core.word.length > 1) return null;
   const a = pairRoot(core.first - 1, ring);
   return { x: 1 - 2 * a.x, y: -2 * a.y };
-}
-
-function addMultiple(sum: bigint, factor: number, x: bigint): bigint {
-  if (factor === 1) return sum + x;
-  if (factor === -1) return sum - x;
-  return factor === 0 ? sum : sum + BigInt(factor) * x;
 }
 
 function multiple(factor: number, x: bigint): bigint {

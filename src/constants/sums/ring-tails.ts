@@ -10,7 +10,7 @@
  */
 import { gcdOf } from '../../number/integer.ts';
 import type { EvaluationContext } from '../family.ts';
-import { centralInverses, powersOf, pulse, type TailsSize, tailsSize } from './double-tails.ts';
+import { addMultiple, centralInverses, powersOf, pulse, type TailsSize, tailsSize } from './double-tails.ts';
 import type { Core, Plan } from './plan.ts';
 import { greatestCommonDivisor } from './roots.ts';
 
@@ -136,10 +136,4 @@ function applyMap({ rows, norm }: RingMap, from: readonly bigint[], to: bigint[]
 
 function addScaled(sum: bigint[], coefficients: readonly number[], x: bigint): void {
   for (let l = 0; l < DEGREE; l++) sum[l] = addMultiple(sum[l] as bigint, coefficients[l] as number, x);
-}
-
-function addMultiple(sum: bigint, factor: number, x: bigint): bigint {
-  if (factor === 0) return sum;
-  if (factor === 1) return sum + x;
-  return factor === -1 ? sum - x : sum + BigInt(factor) * x;
 }

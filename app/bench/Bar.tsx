@@ -1,6 +1,7 @@
 /** The head of the page: name, project, state of saving, undo, theme, keys. */
 import { useRef, useState } from 'react';
 import { Mark } from '../parts/Mark.tsx';
+import { usePlace } from '../place.ts';
 import { useBench, useProject } from '../state/react.ts';
 import type { SaveState } from '../state/store.ts';
 import { applyTheme, storedTheme, type Theme } from '../state/theme.ts';
@@ -15,6 +16,7 @@ export function Bar() {
         <Mark />
         <span>Digit Assay</span>
       </p>
+      <Places />
       <input
         className="project-title"
         aria-label="Name of the project"
@@ -30,6 +32,20 @@ export function Bar() {
         <KeyList />
       </div>
     </header>
+  );
+}
+
+function Places() {
+  const place = usePlace();
+  return (
+    <nav aria-label="Places" className="places">
+      <a href="#sheet" aria-current={place === 'bench' ? 'page' : undefined}>
+        Bench
+      </a>
+      <a href="#catalogue" aria-current={place === 'catalogue' ? 'page' : undefined}>
+        Catalogue
+      </a>
+    </nav>
   );
 }
 

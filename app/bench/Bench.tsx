@@ -1,6 +1,7 @@
 /** The bench: the project's values at the side, and the sheet of the one in hand. */
-import { useCallback, useEffect, useMemo, useRef } from 'react';
+import { lazy, Suspense, useCallback, useEffect, useMemo, useRef } from 'react';
 import { searchEngine } from '../engine.ts';
+import { usePlace } from '../place.ts';
 import { currentRecord, LONGEST_TEXT, labelOf } from '../state/project.ts';
 import { useBench, useBenchStore, useProject, useSelected } from '../state/react.ts';
 import { startSearch } from '../state/search.ts';
@@ -13,6 +14,8 @@ import { readEntry } from './reading.ts';
 import { SearchSheet } from './SearchSheet.tsx';
 import { ValueList } from './ValueList.tsx';
 import { ValueSheet } from './ValueSheet.tsx';
+
+const CataloguePage = lazy(() => import('../catalogue/CataloguePage.tsx').then((m) => ({ default: m.CataloguePage })));
 
 export function Bench({ onTakeOther }: { onTakeOther: () => void }) {
   const store = useBenchStore();
@@ -30,25 +33,32 @@ export function Bench({ onTakeOther }: { onTakeOther: () => void }) {
   useKeys(store, search);
   usePasteAnywhere();
   useResultInSight(running);
+  const place = usePlace();
   const index = project.values.findIndex((v) => v.id === value.id);
 
   return (
     <>
-      <a className="skip" href="#sheet">
-        Skip to the sheet
+      <a className="skip" href={place === 'catalogue' ? '#catalogue' : '#sheet'}>
+        {place === 'catalogue' ? 'Skip to the catalogue' : 'Skip to the sheet'}
       </a>
       <Bar />
-      <div className="frame">
-        <ValueList />
-        <main id="sheet" tabIndex={-1}>
-          <h1 className="visually-hidden">{labelOf(value, index)}</h1>
-          <Notices onTakeOther={onTakeOther} />
-          <ValueSheet key={value.id} value={value} reading={reading} record={record} />
-          <BasisSheet value={value} reading={reading} />
-          <SearchSheet value={value} reading={reading} onSearch={search} searched={record !== null} />
-          {latest !== null && !running && <ResultSheets record={latest} stale={record === null} value={value} />}
-        </main>
-      </div>
+      {place === 'catalogue' ? (
+        <Suspense fallback={<p className="note waiting">Opening the catalogue …</p>}>
+          <CataloguePage />
+        </Suspense>
+      ) : (
+        <div className="frame">
+          <ValueList />
+          <main id="sheet" tabIndex={-1}>
+            <h1 className="visually-hidden">{labelOf(value, index)}</h1>
+            <Notices onTakeOther={onTakeOther} />
+            <ValueSheet key={value.id} value={value} reading={reading} record={record} />
+            <BasisSheet value={value} reading={reading} />
+            <SearchSheet value={value} reading={reading} onSearch={search} searched={record !== null} />
+            {latest !== null && !running && <ResultSheets record={latest} stale={record === null} value={value} />}
+          </main>
+        </div>
+      )}
       <div className="visually-hidden" role="status" aria-live="polite">
         {announcement}
       </div>

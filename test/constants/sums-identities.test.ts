@@ -2,11 +2,14 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { REAL_STEP, tailsSize } from '../../src/constants/sums/double-tails.ts';
+import type { Letters } from '../../src/constants/sums/general-size.ts';
+import { evaluateInPieces } from '../../src/constants/sums/path.ts';
 import { planWords } from '../../src/constants/sums/plan.ts';
 import { realTails } from '../../src/constants/sums/real-tails.ts';
 import { evaluateRootSums, type RootSum } from '../../src/constants/sums/root-words.ts';
-import { contains, fromInteger, overlaps } from '../../src/number/ball.ts';
-import { add, multiply, subtract, toComplex, type Value } from '../../src/number/complex.ts';
+import { codeOf, letterOf, wordAtRoots } from '../../src/constants/sums/words.ts';
+import { contains, fromInteger, negate, overlaps, sqrt, timesPowerOfTwo } from '../../src/number/ball.ts';
+import { add, type ComplexBall, multiply, subtract, toComplex, type Value } from '../../src/number/complex.ts';
 import { context, expectSame } from './sums-support.ts';
 
 const BITS = 300;
@@ -76,6 +79,32 @@ function shuffle(a: readonly number[], b: readonly number[]): number[][] {
   ];
 }
 
+/** The letters e^{2πi·e/order} from √3 and 1/2, for orders that divide 4 or 6. */
+function rootLetters(list: readonly (readonly [number, number])[]): Letters {
+  const zero = fromInteger(0n);
+  const half = timesPowerOfTwo(fromInteger(1n), -1);
+  return {
+    exact: list.map(() => null),
+    values: (bits) => {
+      const high = timesPowerOfTwo(sqrt(fromInteger(3n), bits + 4), -1);
+      const one = fromInteger(1n);
+      const quarter: ComplexBall[] = [
+        { re: one, im: zero },
+        { re: high, im: half },
+        { re: half, im: high },
+      ];
+      return list.map(([exponent, m]) => {
+        const twelfths = (12 * exponent) / m;
+        const { re, im } = quarter[twelfths % 3] as ComplexBall;
+        const turns = Math.floor(twelfths / 3) % 4;
+        if (turns === 0) return { re, im };
+        if (turns === 1) return { re: negate(im), im: re };
+        return turns === 2 ? { re: negate(re), im: negate(im) } : { re: im, im: negate(re) };
+      });
+    },
+  };
+}
+
 describe('identities', () => {
   const pair = order.chain((m) => fc.tuple(sums(m, 2), sums(m, 2)));
 
@@ -117,6 +146,26 @@ describe('identities', () => {
       const gap = mid(k) - mid(words.length + k);
       expect(gap <= 2n * size.radius && gap >= -2n * size.radius, w).toBe(true);
     });
+  });
+
+  it('path composition: the integrals cut in two and more pieces', () => {
+    const bits = 200;
+    const light = fc.constantFrom(2, 3, 4, 6).chain((m) => sums(m, 3));
+    fc.assert(
+      fc.property(
+        light.filter((a) => toLetters(a).length <= 6),
+        (a) => {
+          const word = wordAtRoots(a.indices, a.exponents, a.order);
+          const used = [...new Set(word)].filter((c) => c !== '0' && c !== '1');
+          const letters = rootLetters(used.map((c) => [codeOf(c) - 1, a.order]));
+          const renamed = [...word].map((c) => (used.includes(c) ? letterOf(2 + used.indexOf(c)) : c)).join('');
+          const [cut] = evaluateInPieces([renamed], letters, bits, context);
+          const [whole] = evaluate([a], bits);
+          expectSame(cut as Value, whole as Value, JSON.stringify(a), bits);
+        },
+      ),
+      { seed: 15, numRuns: 25 },
+    );
   });
 
   it('sum theorem: the values of one weight and depth add up to ζ(weight) (Granville 1997; Zagier)', () => {

@@ -43,6 +43,16 @@ export function evaluateWordsOnPath(
   const plan = planWords(words);
   const direct = log2Growth(plan, letters);
   if (direct <= EASY_GROWTH) return generalAnswers(plan, letters, bits, context);
+  return evaluateInPieces(words, letters, bits, context);
+}
+
+/** As `evaluateWordsOnPath`, but always in pieces (two at least): an independent route for letters that need no cut. */
+export function evaluateInPieces(
+  words: readonly Word[],
+  letters: Letters,
+  bits: number,
+  context: EvaluationContext,
+): ComplexBall[] {
   const cuts = cutPath(letters);
   for (let extra = 16; ; extra *= 2) {
     const results = composed(words, letters, cuts, bits + extra, context);

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { checksumOf } from '../../src/relation/lattice/checksum.ts';
 import { RowFactor } from '../../src/relation/lattice/factor.ts';
 import { newKernels } from '../../src/relation/lattice/kernels/load.ts';
-import { LatticeSearch, type SearchEnd } from '../../src/relation/lattice/run.ts';
+import { LatticeSearch, type SearchEnd } from '../../src/relation/lattice/search.ts';
 import { randomFrom } from '../support/random.ts';
 
 function search(integers: bigint[][]): LatticeSearch {
@@ -81,30 +81,30 @@ describe('recovery', () => {
     const work = search(integers);
     const { end } = runWith(work, () => false);
     expect(proportional(end.candidate, relation)).toBe(true);
-    expect(work.progress.rollbacks).toBe(0);
+    expect(work.stages.counts.rollbacks).toBe(0);
   });
 
   it('a spoilt factor is noticed and recomputed from the exact rows', () => {
     const work = search(integers);
-    const { state } = work;
+    const { state } = work.stages;
     let before = 0;
     const { end, disturbed } = runWith(work, (steps) => {
       if (steps < 25) return false;
-      before = work.progress.refreshes;
+      before = work.stages.counts.refreshes;
       const f = state.kernels.view();
       for (let i = 5; i < 20; i++)
         f[state.l + i * (state.stride + 1)] = (f[state.l + i * (state.stride + 1)] as number) * 1.1;
       return true;
     });
     expect(disturbed).toBe(true);
-    expect(work.progress.refreshes).toBeGreaterThan(before);
-    expect(work.progress.rollbacks).toBe(0);
+    expect(work.stages.counts.refreshes).toBeGreaterThan(before);
+    expect(work.stages.counts.rollbacks).toBe(0);
     expect(proportional(end.candidate, relation)).toBe(true);
   });
 
   it('a spoilt transform is noticed, and the search goes back to the last exact rows', () => {
     const work = search(integers);
-    const { state } = work;
+    const { state } = work.stages;
     const { end, disturbed } = runWith(work, (steps) => {
       if (steps < 20 || state.transformBits === 0) return false;
       // Row 7 twice over: the transform is no longer unimodular.
@@ -115,7 +115,7 @@ describe('recovery', () => {
       return true;
     });
     expect(disturbed).toBe(true);
-    expect(work.progress.rollbacks).toBeGreaterThan(0);
+    expect(work.stages.counts.rollbacks).toBeGreaterThan(0);
     expect(proportional(end.candidate, relation)).toBe(true);
     // The basis is exact and a basis: every row's residual is right, and the relation is in it.
     for (const { y, b } of work.exactBasis()) {
@@ -125,7 +125,7 @@ describe('recovery', () => {
 
   it('spoilt residuals in the window never yield a wrong relation', () => {
     const work = search(integers);
-    const { state } = work;
+    const { state } = work.stages;
     const { end } = runWith(work, (steps) => {
       if (steps < 20) return false;
       const f = state.kernels.view();

@@ -274,6 +274,27 @@ describe('numbers of very different size', () => {
   });
 });
 
+describe('a relation that only holds on the leading digits', () => {
+  it('does not stop the search, and the rest of the digits strengthens the bound', () => {
+    const random = randomFrom('lattice tail');
+    for (const [n, right, digits] of [
+      [2, 50, 1000],
+      [3, 60, 1000],
+      [4, 50, 3000],
+      [12, 120, 900],
+    ] as const) {
+      const bits = bitsOf(digits);
+      const { integers } = planted(random, n, 1, 3, bits);
+      const last = integers[n - 1] as bigint[];
+      last[0] = (last[0] as bigint) + random.bits(bits - bitsOf(right));
+      const result = finish({ integers, accept: () => false });
+      expect(result.kind, `n = ${n}`).toBe('exhausted');
+      expectUnimodular(result.basis(), n);
+      expect(result.floatNormBoundLog10).toBeGreaterThan(digits / n - 2 - n * Math.log10(1.03));
+    }
+  });
+});
+
 describe('degenerate input ends at once', () => {
   it('zero, equal and opposite numbers', () => {
     const random = randomFrom('lattice degenerate');

@@ -14,7 +14,7 @@ import type { ExactRow } from './state.ts';
 
 /** Clusters of pending numbers are split where neighbours in size differ by more than this many bits. */
 const CLUSTER_GAP = 16;
-const PARK_GAP = 30;
+export const PARK_GAP = 30;
 /** Parked rows join again when the longest other row is within this many bits of them. */
 export const JOIN_GAP = 20;
 /** Each pass takes some 40 bits off the quotients; sizes differ by some 10^5 bits at most. */

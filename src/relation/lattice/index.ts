@@ -1,7 +1,7 @@
 /** The lattice method: integer relations by lattice reduction in doubles on exact residuals, precision fed in gradually. */
 import { bitLength } from '../../number/integer.ts';
 import { type KernelChoice, newKernels } from './kernels/load.ts';
-import { LatticeSearch, type SearchEnd } from './run.ts';
+import { LatticeSearch, type SearchEnd } from './search.ts';
 
 export interface LatticeInput {
   /** n rows × m columns; all at one scale, so that one unit means the same precision everywhere. */
@@ -79,7 +79,8 @@ export function startLattice(input: LatticeInput): LatticeRun {
   return {
     kernels: kernels.kind,
     get progress() {
-      const { fraction, iterations, floatNormBoundLog2, refreshes, rollbacks } = search.progress;
+      const { fraction, floatNormBoundLog2 } = search.progress;
+      const { iterations, refreshes, rollbacks } = search.stages.counts;
       return { fraction, iterations, floatNormBoundLog10: floatNormBoundLog2 * Math.log10(2), refreshes, rollbacks };
     },
     step() {
@@ -112,7 +113,7 @@ function resultOf(search: LatticeSearch, end: SearchEnd): LatticeResult {
     weightBits: end.e,
     fedBits: search.startBits - end.e,
     floatNormBoundLog10: Math.max(0, end.floatNormBoundLog2 * Math.log10(2)),
-    iterations: search.progress.iterations,
+    iterations: search.stages.counts.iterations,
     basis: () => search.exactBasis().map((row) => row.b),
   };
 }

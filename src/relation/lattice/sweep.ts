@@ -1,6 +1,9 @@
 /** One stage of reduction: LLL on overlapping windows from the first row to the last, then a size reduction of all rows. */
 import { type LatticeState, WINDOW_STRIDE } from './state.ts';
 
+/** Lovász factor. */
+export const DELTA = 0.99;
+
 export interface SweepShape {
   readonly width: number;
   readonly step: number;

@@ -1,0 +1,100 @@
+/** Which rows take part at present: see groups.ts for those that wait. */
+import { checksumOf } from './checksum.ts';
+import { profile } from './feed.ts';
+import { type Arranged, arrange, type Cluster, clusters, JOIN_GAP, PARK_GAP, type Parked, parkFrom } from './groups.ts';
+import { timesPowerOfTwo } from './limbs.ts';
+import { diagonalLog2, type Stages } from './stages.ts';
+import { type ExactRow, exactRow, type LatticeState, loadRows } from './state.ts';
+
+/** Pending numbers join this many bits before they are touched, so that several join together. */
+const ARRIVE_EARLY = 24;
+
+export class Members {
+  private readonly integers: readonly (readonly bigint[])[];
+  private readonly stages: Stages;
+  private readonly pending: Cluster[];
+  private readonly parked: Parked[] = [];
+
+  constructor(integers: readonly (readonly bigint[])[], stages: Stages) {
+    this.integers = integers;
+    this.stages = stages;
+    this.pending = clusters(integers);
+  }
+
+  /** Makes the numbers active that the next b bits would touch, with some to come soon after. False when there are none. */
+  *arrive(b: number): Generator<void, boolean, void> {
+    const { state } = this.stages;
+    if (this.pending.length === 0 || (this.pending[0] as Cluster).bits < state.e - b - 1) return false;
+    const arrivals: ExactRow[] = [];
+    while (this.pending.length > 0 && (this.pending[0] as Cluster).bits >= state.e - b - ARRIVE_EARLY) {
+      arrivals.push(...(this.pending.shift() as Cluster).rows);
+    }
+    yield* this.regroup(arrivals, []);
+    return true;
+  }
+
+  /** Parks rows across a gap that has opened, and brings parked rows back when the others have grown near them. */
+  *mind(): Generator<void, void, void> {
+    const { stages } = this;
+    const { state } = stages;
+    if (stages.shape.largest - stages.shape.least > PARK_GAP) {
+      const from = parkFrom(Array.from(diagonalLog2(state)));
+      if (from < state.active) yield* this.regroup([], []);
+    }
+    for (;;) {
+      const last = this.parked.at(-1);
+      if (last === undefined || stages.shape.largest + state.scale < last.least - JOIN_GAP) return;
+      this.parked.pop();
+      yield* this.regroup([], last.rows);
+    }
+  }
+
+  /** log2 of the shortest that a row not active can be, beyond the span of the active ones. */
+  leastWaiting(): number {
+    const parked = Math.min(...this.parked.map((group) => group.least));
+    return this.pending.length > 0 ? Math.min(0, parked) : parked;
+  }
+
+  /** The whole basis, exact: active rows, then parked, then pending ones. Only while no stage is under way. */
+  exactBasis(): ExactRow[] {
+    const waiting = [...[...this.parked].reverse(), ...this.pending].flatMap((group) => group.rows);
+    return [...this.activeRows(), ...waiting];
+  }
+
+  private activeRows(): ExactRow[] {
+    const { state } = this.stages;
+    return Array.from({ length: state.active }, (_, i) => exactRow(state, i));
+  }
+
+  /** Makes the rows in front, the active ones and those behind active, except for those that a gap parks. */
+  private *regroup(front: readonly ExactRow[], behind: readonly ExactRow[]): Generator<void, void, void> {
+    const { stages } = this;
+    const { state } = stages;
+    yield* stages.flushRows(state.e);
+    const arranged = yield* arrange([...front, ...this.activeRows(), ...behind], state.e);
+    const count = parkFrom(arranged.diagonal);
+    if (count < arranged.rows.length) {
+      const least = Math.min(...arranged.diagonal.slice(count));
+      this.parked.push({ rows: arranged.rows.slice(count), least });
+    }
+    const active = arranged.rows.slice(0, count);
+    yield* loadRows(state, active);
+    state.scale = Math.floor(Math.min(...arranged.diagonal.slice(0, count)));
+    loadFactor(state, arranged, count);
+    // Rows that are part of a basis of ℤⁿ span all integer vectors on their support when there are as many as it has places.
+    const support = this.integers.filter((_, j) => active.some((row) => row.b[j] !== 0n));
+    stages.checksum = support.length === active.length ? checksumOf(support) : undefined;
+    stages.shape = profile(state);
+    stages.measureResiduals();
+  }
+}
+
+function loadFactor(state: LatticeState, arranged: Arranged, count: number): void {
+  const f = state.kernels.view();
+  for (let i = 0; i < count; i++) {
+    const at = state.l + i * state.stride;
+    const exponent = (arranged.exponents[i] as number) - state.scale;
+    f.fill(0, at, at + state.stride);
+    for (let j = 0; j <= i; j++) f[at + j] = timesPowerOfTwo(arranged.coordinates[i]?.[j] as number, exponent);
+  }
+}

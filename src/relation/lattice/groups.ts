@@ -1,8 +1,9 @@
 /**
  * Numbers of very different size. The factor in doubles only ever holds rows whose lengths resolve each other; two kinds of rows wait outside it:
  *
- * - pending: numbers so small that the bits fed so far are zero for them. Their rows are unit vectors; they
- *   join as a cluster when the feed comes near their leading bits.
+ * - pending: rows whose residual is still small against their length at the bits fed so far: at first the numbers that are much
+ *   smaller than others (their rows are unit vectors), later short rows that vanish on the leading digits only.
+ *   They join as a cluster when the feed comes near their leading bits.
  * - parked: rows longer than all others by 2^PARK_GAP or more. In a reduced basis they stand last, and nothing can move across the gap
  *   until the shorter rows have grown; then they are size-reduced exactly, in as many passes of double precision as
  *   their quotients need, and join again.
@@ -24,8 +25,10 @@ export const ROWS_PER_STEP = 16;
 
 export interface Cluster {
   readonly rows: ExactRow[];
-  /** Bits of the largest residual in it. */
+  /** Weight 2^−bits is where its residuals reach its lengths. */
   readonly bits: number;
+  /** log2 of the shortest length in it. */
+  readonly least: number;
 }
 
 export interface Parked {
@@ -42,10 +45,10 @@ export function clusters(integers: readonly (readonly bigint[])[]): Cluster[] {
     row: { y: [...y], b: Array.from({ length: n }, (_, k) => (k === i ? 1n : 0n)) },
   }));
   sized.sort((p, q) => q.bits - p.bits);
-  const found: { rows: ExactRow[]; bits: number }[] = [];
+  const found: { rows: ExactRow[]; bits: number; least: number }[] = [];
   let last = Number.POSITIVE_INFINITY;
   for (const { bits, row } of sized) {
-    if (found.length === 0 || last - bits > CLUSTER_GAP) found.push({ rows: [row], bits });
+    if (found.length === 0 || last - bits > CLUSTER_GAP) found.push({ rows: [row], bits, least: 0 });
     else found[found.length - 1]?.rows.push(row);
     last = bits;
   }

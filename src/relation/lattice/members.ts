@@ -7,7 +7,7 @@ import { diagonalLog2, type Stages } from './stages.ts';
 import { type ExactRow, exactRow, type LatticeState, loadRows } from './state.ts';
 
 /** Pending numbers join this many bits before they are touched, so that several join together. */
-const ARRIVE_EARLY = 24;
+const ARRIVE_EARLY = 8;
 
 export class Members {
   private readonly integers: readonly (readonly bigint[])[];
@@ -21,10 +21,20 @@ export class Members {
     this.pending = clusters(integers);
   }
 
-  /** Makes the numbers active that the next b bits would touch, with some to come soon after. False when there are none. */
+  /** How many of b bits to feed before someone has to join; at least 1. */
+  limit(b: number): number {
+    const { state, shape } = this.stages;
+    const next = this.pending[0];
+    const last = this.parked.at(-1);
+    const untilPending = next === undefined ? b : state.e - next.bits - 1;
+    const untilParked = last === undefined ? b : last.least - JOIN_GAP - shape.largest - state.scale;
+    return Math.max(1, Math.min(b, Math.ceil(untilPending), Math.ceil(untilParked)));
+  }
+
+  /** Makes the pending rows active that the next `b` bits would touch, with some to come soon after. False when there are none. */
   *arrive(b: number): Generator<void, boolean, void> {
     const { state } = this.stages;
-    if (this.pending.length === 0 || (this.pending[0] as Cluster).bits < state.e - b - 1) return false;
+    if (this.pending.length === 0 || (this.pending[0] as Cluster).bits < state.e - b) return false;
     const arrivals: ExactRow[] = [];
     while (this.pending.length > 0 && (this.pending[0] as Cluster).bits >= state.e - b - ARRIVE_EARLY) {
       arrivals.push(...(this.pending.shift() as Cluster).rows);
@@ -33,14 +43,11 @@ export class Members {
     return true;
   }
 
-  /** Parks rows across a gap that has opened, and brings parked rows back when the others have grown near them. */
+  /** Sets rows aside when a gap has opened, and brings parked rows back when the others have grown near them. */
   *mind(): Generator<void, void, void> {
     const { stages } = this;
     const { state } = stages;
-    if (stages.shape.largest - stages.shape.least > PARK_GAP) {
-      const from = parkFrom(Array.from(diagonalLog2(state)));
-      if (from < state.active) yield* this.regroup([], []);
-    }
+    if (stages.shape.largest - stages.shape.least > PARK_GAP) yield* this.part();
     for (;;) {
       const last = this.parked.at(-1);
       if (last === undefined || stages.shape.largest + state.scale < last.least - JOIN_GAP) return;
@@ -51,14 +58,37 @@ export class Members {
 
   /** log2 of the shortest that a row not active can be, beyond the span of the active ones. */
   leastWaiting(): number {
-    const parked = Math.min(...this.parked.map((group) => group.least));
-    return this.pending.length > 0 ? Math.min(0, parked) : parked;
+    return Math.min(...[...this.parked, ...this.pending].map((group) => group.least));
   }
 
-  /** The whole basis, exact: active rows, then parked, then pending ones. Only while no stage is under way. */
+  /** The whole basis, exact, shorter groups first. Only while no stage is under way. */
   exactBasis(): ExactRow[] {
-    const waiting = [...[...this.parked].reverse(), ...this.pending].flatMap((group) => group.rows);
-    return [...this.activeRows(), ...waiting];
+    const { state, shape } = this.stages;
+    const active = { rows: this.activeRows(), least: shape.least + state.scale };
+    return [active, ...this.parked, ...this.pending].sort((p, q) => p.least - q.least).flatMap((group) => group.rows);
+  }
+
+  /**
+   * Parts the active rows at a gap. While the residuals of the short ones are small against their lengths the long ones go on growing
+   * by themselves, and the short ones wait; once they count, it is the long ones that stand still and wait.
+   */
+  private *part(): Generator<void, void, void> {
+    const { stages, pending } = this;
+    const { state } = stages;
+    const diagonal = Array.from(diagonalLog2(state));
+    const from = parkFrom(diagonal);
+    if (from === state.active) return;
+    const least = Math.min(...diagonal.slice(0, from)) + state.scale;
+    const bits = Math.max(...stages.residuals.subarray(0, from)) - least;
+    if (bits >= state.e - 1) {
+      yield* this.regroup([], []);
+      return;
+    }
+    yield* stages.flushRows(state.e);
+    const rows = this.activeRows();
+    pending.push({ rows: rows.slice(0, from), bits, least });
+    pending.sort((p, q) => q.bits - p.bits);
+    yield* this.activate(rows.slice(from));
   }
 
   private activeRows(): ExactRow[] {
@@ -68,10 +98,14 @@ export class Members {
 
   /** Makes the rows in front, the active ones and those behind active, except for those that a gap parks. */
   private *regroup(front: readonly ExactRow[], behind: readonly ExactRow[]): Generator<void, void, void> {
+    yield* this.stages.flushRows(this.stages.state.e);
+    yield* this.activate([...front, ...this.activeRows(), ...behind]);
+  }
+
+  private *activate(rows: readonly ExactRow[]): Generator<void, void, void> {
     const { stages } = this;
     const { state } = stages;
-    yield* stages.flushRows(state.e);
-    const arranged = yield* arrange([...front, ...this.activeRows(), ...behind], state.e);
+    const arranged = yield* arrange(rows, state.e);
     const count = parkFrom(arranged.diagonal);
     if (count < arranged.rows.length) {
       const least = Math.min(...arranged.diagonal.slice(count));

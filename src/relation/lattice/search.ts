@@ -86,12 +86,12 @@ export class LatticeSearch {
   *run(): Generator<void, SearchEnd, void> {
     const { stages, members, input } = this;
     const { state } = stages;
-    yield* members.arrive(state.e);
+    yield* members.arrive(0);
     const immediate = this.testExact();
     if (immediate !== undefined) return immediate;
     while (state.e > input.endBits) {
-      const b = stages.nextFeed(input.endBits);
-      if (yield* members.arrive(b)) continue;
+      if (yield* members.arrive(1)) continue;
+      const b = members.limit(stages.nextFeed(input.endBits));
       let look = stages.windowShort(b);
       if (!look) {
         if (!(yield* stages.feedAndReduce(b))) return this.end('unstable');

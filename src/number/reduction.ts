@@ -34,7 +34,7 @@ const BITS_PER_TERM = 47.11;
  * (1 + 40.2 N) 2^{−47.11 N}; N ≥ w/47.11 + 2 makes that less than 2^−w/64 for every N < 10¹¹. Rounding: the integer square
  * root is short by less than one unit in 100·2^w, the quotient by less than one unit of 2^−w. Radius: 2 units.
  */
-function computePi(bits: number): Ball {
+export function computePi(bits: number): Ball {
   const work = bits + 4;
   const count = Math.floor(work / BITS_PER_TERM) + 3;
   const { Q, T } = splitSeries(

@@ -15,6 +15,7 @@ import { TypeConstant } from './TypeConstant.tsx';
 
 /** The space that is one click away, by the highest weight. */
 const READY = 'polylog-half';
+const READY_LATEX = '\\zeta,\\ \\pi,\\ \\log 2,\\ \\mathrm{Li}_n(\\tfrac12)';
 const READY_WEIGHTS = [1, 2, 3, 4, 5];
 
 /** Constants picked most often, beyond those of the ready space. */
@@ -63,7 +64,7 @@ function ReadySpaces({ basis, onPick }: PickProps) {
   return (
     <fieldset className="ready" aria-label="ζ, π, log 2 and polylogarithms at one half, up to weight">
       <span className="ready-name" aria-hidden="true">
-        ζ, π, log 2, Li<sub>n</sub>(½) up to weight
+        <Formula latex={READY_LATEX} text="ζ, π, log 2, Li_n(½)" /> up to weight
       </span>
       {READY_WEIGHTS.map((weight) => {
         const texts = spaceOf(READY).basis(weight, { lower: true });
@@ -95,10 +96,12 @@ function Picks({ basis, onPick }: PickProps) {
             key={text}
             className="pick"
             aria-pressed={on}
-            aria-label={text}
             onClick={() => onPick(on ? basis.filter((t) => t !== text) : [...basis, text])}
           >
-            <Formula latex={latex} text={text} />
+            <span aria-hidden="true">
+              <Formula latex={latex} text={text} />
+            </span>
+            <span className="visually-hidden">{text}</span>
           </button>
         );
       })}

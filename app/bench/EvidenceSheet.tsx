@@ -2,6 +2,7 @@
 import type { Evidence, EvidenceItem } from '../../src/evidence/evidence.ts';
 import { NOT_A_PROOF } from '../../src/evidence/verdict.ts';
 import type { SearchRecord } from '../../src/search/record.ts';
+import { searchEngine } from '../engine.ts';
 import { AgreementPlot } from '../parts/AgreementPlot.tsx';
 import { Formula } from '../parts/Formula.tsx';
 import { Power } from '../parts/Power.tsx';
@@ -9,7 +10,8 @@ import { raisePowers } from '../parts/powers.ts';
 import { Sheet } from '../parts/Sheet.tsx';
 import { markOf, VerdictMark } from '../parts/VerdictMark.tsx';
 import type { ValueEntry } from '../state/project.ts';
-import { useBench } from '../state/react.ts';
+import { useBenchStore } from '../state/react.ts';
+import { startSearch } from '../state/search.ts';
 
 const SPEAKS = {
   for: { sign: '+', word: 'speaks for it' },
@@ -67,7 +69,7 @@ function Words({ record }: { record: SearchRecord }) {
   return (
     <div className="verdict-words">
       {diagnosis.map((sentence) => (
-        <p key={sentence}>{sentence}</p>
+        <p key={sentence}>{raisePowers(sentence)}</p>
       ))}
       {evidence !== null && <Rule rule={evidence.rule} />}
       {outcome === 'relation' && <p className="fixed-sentence">{NOT_A_PROOF}</p>}
@@ -130,7 +132,12 @@ function EvidenceList({ items }: { items: readonly EvidenceItem[] }) {
 }
 
 function Dependence({ record, value }: { record: SearchRecord; value: ValueEntry }) {
-  const change = useBench((s) => s.change);
+  const store = useBenchStore();
+  const leaveOut = (constant: string): void => {
+    const basis = value.basis.filter((text) => text !== constant);
+    store.getState().change(value.id, { basis });
+    startSearch(store, searchEngine, { ...value, basis });
+  };
   const involved = record.relation.filter((r) => r.coefficient !== '0');
   return (
     <div className="dependence">
@@ -143,12 +150,8 @@ function Dependence({ record, value }: { record: SearchRecord; value: ValueEntry
       </div>
       <div className="row">
         {involved.map((r) => (
-          <button
-            type="button"
-            key={r.constant}
-            onClick={() => change(value.id, { basis: value.basis.filter((text) => text !== r.constant) })}
-          >
-            Leave out {r.constant}
+          <button type="button" key={r.constant} onClick={() => leaveOut(r.constant)}>
+            Leave out {r.constant} and search again
           </button>
         ))}
       </div>

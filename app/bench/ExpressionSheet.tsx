@@ -3,6 +3,7 @@ import { factoredText } from '../../src/evidence/factors.ts';
 import type { RelationEntry, SearchRecord } from '../../src/search/record.ts';
 import { CopyButton } from '../parts/CopyButton.tsx';
 import { Formula } from '../parts/Formula.tsx';
+import { raisePowers } from '../parts/powers.ts';
 import { Sheet } from '../parts/Sheet.tsx';
 
 export function ExpressionSheet({ record }: { record: SearchRecord }) {
@@ -61,7 +62,9 @@ function CoefficientRow({ entry }: { entry: RelationEntry }) {
       </th>
       <td className="mono">{entry.weight ?? '–'}</td>
       <td className="number mono">{entry.coefficient.replace('-', '−')}</td>
-      <td className="mono">{unused ? 'not used' : denominator === '1' ? '' : factoredText(BigInt(denominator))}</td>
+      <td className="mono">
+        {unused ? 'not used' : denominator === '1' ? '' : raisePowers(factoredText(BigInt(denominator)))}
+      </td>
     </tr>
   );
 }

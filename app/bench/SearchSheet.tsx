@@ -29,7 +29,7 @@ export function SearchSheet({
   const problem = useBench((s) => s.problems[value.id]);
   const missing = missingWord(reading, value.basis.length);
   return (
-    <Sheet step={3} title="Search" figures={searched && running === undefined ? figuresOf(value) : []}>
+    <Sheet step={3} title="Search" kind="in-sight" figures={searched && running === undefined ? figuresOf(value) : []}>
       {running === undefined ? (
         <div className="row middle">
           <button

@@ -1,4 +1,5 @@
 /** The project's values, each with the state of its search. */
+import { useEffect } from 'react';
 import type { SearchRecord } from '../../src/search/record.ts';
 import { type MarkKey, markOf, VerdictMark } from '../parts/VerdictMark.tsx';
 import { currentRecord, labelOf, type ValueEntry } from '../state/project.ts';
@@ -11,6 +12,10 @@ export function ValueList() {
   const running = useBench((s) => s.running);
   const store = useBenchStore();
   const { select, remove } = store.getState();
+  const { selected } = project;
+  useEffect(() => {
+    document.getElementById(`value-${selected}`)?.scrollIntoView({ block: 'nearest', inline: 'nearest' });
+  }, [selected]);
   return (
     <nav className="values" aria-label="Values of the project">
       <h2>Values</h2>

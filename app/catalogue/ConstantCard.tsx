@@ -24,9 +24,7 @@ export function ConstantCard({
   const [digits, setDigits] = useState(50);
   const { value, complaint, busy, cancel } = useValue(text, digits);
   const ids = { text: useId(), digits: useId(), note: useId() };
-  const name = /^[A-Za-z_]\w*/.exec(text.trim())?.[0] ?? '';
-  const families = catalogue?.families.filter((f) => f.names.includes(name)) ?? [];
-  const family = families.find((f) => f.constants.some((c) => c.text === text.trim())) ?? families[0];
+  const family = catalogue?.families.find((f) => f.key === value?.family);
   return (
     <section className="card" aria-label="One constant">
       <div className="field">

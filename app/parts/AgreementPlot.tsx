@@ -51,7 +51,10 @@ export function AgreementPlot({ evidence }: { evidence: Evidence }) {
         <text x={(x(0) + x(top)) / 2} y={HEIGHT - 4} textAnchor="middle">
           digits used
         </text>
-        <text x={x(0) + 6} y={y(budget) + 13} className="plot-note">
+        <text transform={`translate(11 ${(y(0) + y(top)) / 2}) rotate(-90)`} textAnchor="middle">
+          digits agreed
+        </text>
+        <text x={x(top) - 4} y={y(budget) + 13} textAnchor="end">
           {budget > top / 9 ? 'within reach of chance' : ''}
         </text>
       </svg>

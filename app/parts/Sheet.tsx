@@ -5,17 +5,20 @@ export function Sheet({
   step,
   title,
   figures = [],
+  kind = '',
   children,
 }: {
   step: number;
   title: string;
   /** Short facts for the margin. */
   figures?: readonly string[];
+  /** `in-sight` keeps the part at the foot of the window while its place lies below. */
+  kind?: '' | 'in-sight';
   children: ReactNode;
 }) {
   const id = useId();
   return (
-    <section className="sheet" aria-labelledby={id}>
+    <section className={`sheet ${kind}`.trim()} aria-labelledby={id}>
       <header className="margin">
         <h2 id={id}>
           <span className="step" aria-hidden="true">

@@ -1,4 +1,4 @@
-/** 10^k as people write it. */
+/** Powers as people write them. */
 const RAISED: Readonly<Record<string, string>> = {
   '0': '⁰',
   '1': '¹',
@@ -11,13 +11,11 @@ const RAISED: Readonly<Record<string, string>> = {
   '8': '⁸',
   '9': '⁹',
   '-': '⁻',
-  '.': '·',
 };
 
-/** `10^12` inside a sentence becomes 10¹²; other text stays. */
+/** `2^12` inside a text becomes 2¹² and `1.5e9` becomes 1.5 × 10⁹; a fractional exponent is cut to its whole part. */
 export function raisePowers(text: string): string {
-  return text.replace(
-    /10\^(-?\d+)/g,
-    (_, exponent: string) => `10${[...exponent].map((c) => RAISED[c] ?? c).join('')}`,
-  );
+  const written = text.replace(/(\d)e(\d+)/g, '$1 × 10^$2');
+  const raise = (_: string, exponent: string): string => [...exponent].map((c) => RAISED[c] ?? c).join('');
+  return written.replace(/(?<=\d)\^(-?\d+)(?:\.\d+)?/g, raise);
 }

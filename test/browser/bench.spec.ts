@@ -1,58 +1,48 @@
 /** The whole path as a user walks it, with the built app, the real worker and the real IndexedDB. */
-import { readFileSync } from 'node:fs';
-import { expect, type Page, test } from '@playwright/test';
+import { expect, test } from '@playwright/test';
+import { digits, freshValue, problem, readySpace, saved, search, typed, useBasis, verdict } from './walk.ts';
 
-const { problems } = JSON.parse(readFileSync('test/reference/problems-open.json', 'utf8')) as {
-  problems: { id: string; value: string; basis: string[] }[];
-};
-const problem = (id: string) => problems.find((p) => p.id === id) as { value: string; basis: string[] };
-
-async function freshValue(page: Page, digits: string): Promise<void> {
+test('a newcomer gets a result in one click, without scrolling', async ({ page }) => {
   await page.goto('/');
-  await page.getByRole('button', { name: 'New value' }).click();
-  await page.getByLabel('Digits', { exact: true }).fill(digits);
-}
-
-async function useBasis(page: Page, basis: readonly string[]): Promise<void> {
-  const clear = page.getByRole('button', { name: 'Clear all' });
-  if (await clear.isVisible()) await clear.click();
-  for (const text of basis) {
-    await page.getByLabel('Add a constant').fill(text);
-    await page.getByRole('button', { name: 'Add', exact: true }).click();
-    await expect(page.getByLabel('Add a constant')).toHaveValue('');
-  }
-}
-
-const search = (page: Page) => page.getByRole('button', { name: 'Search', exact: true });
-const verdict = (page: Page) => page.locator('.verdict');
-const saved = (page: Page) => expect(page.getByText('Saved in this browser')).toBeVisible();
-
-test('a newcomer gets a result in one click', async ({ page }) => {
-  await page.goto('/');
+  await expect(search(page)).toBeInViewport();
   await search(page).click();
   await expect(verdict(page)).toContainText('Holds');
-  await expect(page.locator('.typed')).toHaveText(
+  await expect(verdict(page)).toBeInViewport();
+  await expect(typed(page)).toHaveText(
     '131/54 - 11*pi^2/36 - pi^2*log(2)/3 + 7*zeta(3)/6 + 2*log(2)^4/9 + 16*Li(4,1/2)/3',
   );
-  await expect(verdict(page)).toContainText('not a proof');
+  await expect(verdict(page)).toContainText('strong evidence, not a proof');
 });
 
 test('paste, choose a space, search, copy LaTeX, reload: still there', async ({ page }) => {
-  await freshValue(page, problem('qed-two-loop').value);
-  await page.getByRole('button', { name: /up to weight 4/ }).click();
+  const { value } = problem('qed-two-loop');
+  await freshValue(page, value);
+  await readySpace(page, 4);
   await search(page).click();
   await expect(verdict(page)).toContainText('Holds');
   await page.getByRole('button', { name: 'Copy LaTeX' }).click();
-  await expect(page.getByRole('button', { name: '✓ Copied' })).toBeVisible();
-  const latex = await page.evaluate(() => navigator.clipboard.readText());
-  expect(latex).toBe(
+  await expect(page.getByRole('button', { name: 'Copied' })).toBeVisible();
+  await expect(page.getByRole('status')).toHaveText('LaTeX copied.');
+  expect(await page.evaluate(() => navigator.clipboard.readText())).toBe(
     '\\frac{197}{144} + \\frac{1}{12}\\,\\pi^{2} - \\frac{1}{2}\\,\\pi^{2}\\,\\log(2) + \\frac{3}{4}\\,\\zeta(3)',
   );
   await saved(page);
   await page.reload();
-  await expect(page.getByLabel('Digits', { exact: true })).toHaveValue(problem('qed-two-loop').value);
   await expect(verdict(page)).toContainText('Holds');
-  await expect(page.locator('.expression .katex')).toBeVisible();
+  await expect(page.getByTestId('expression').locator('.katex')).toBeVisible();
+  await page.getByRole('button', { name: 'Edit digits' }).click();
+  await expect(digits(page)).toHaveValue(value);
+});
+
+test('a number pasted anywhere on the page becomes a value of its own', async ({ page }) => {
+  const { value } = problem('qed-two-loop');
+  await page.goto('/');
+  await page.evaluate((text) => navigator.clipboard.writeText(text), value);
+  await page.locator('main').click({ position: { x: 4, y: 4 } });
+  await page.keyboard.press('Control+V');
+  await expect(page.locator('.value-button')).toHaveCount(4);
+  await page.keyboard.press('Control+Enter');
+  await expect(verdict(page)).toContainText('Holds');
 });
 
 for (const id of ['qed-three-loop', 'massive-vacuum-log', 'euler-sum-quadratic']) {
@@ -65,29 +55,30 @@ for (const id of ['qed-three-loop', 'massive-vacuum-log', 'euler-sum-quadratic']
   });
 }
 
-test('a value outside the basis is excluded with a bound', async ({ page }) => {
+test('a value outside the basis is excluded with a bound, and is told what that states', async ({ page }) => {
+  // ζ(5), from memory; it is in test/reference/constants.json too.
   await freshValue(page, '1.03692775514336992633136548645703416805708091950191281197419267790380358978628148456');
   await useBasis(page, ['1', 'pi^2', 'zeta(3)']);
   await search(page).click();
-  await expect(verdict(page)).toContainText(/Excluded below [\d.]+ · 10[⁰¹²³⁴⁵⁶⁷⁸⁹]+/);
-  await expect(verdict(page)).toContainText('provided that');
+  await expect(page.getByTestId('verdict')).toHaveText(/Excluded\s*below [\d.]+ × 10\d+/);
+  await expect(verdict(page)).toContainText(/at least one of its 4 integers exceeds [\d.]+ × 10\d+/);
 });
 
-test('a dependent basis is named; one click drops a constant and goes on', async ({ page }) => {
+test('a dependent basis is named; one click leaves a constant out and goes on', async ({ page }) => {
   await freshValue(page, problem('euler-sum-quadratic').value);
   await useBasis(page, ['pi^4', 'zeta(4)', 'zeta(3)']);
   await search(page).click();
   await expect(verdict(page)).toContainText('Basis dependent');
-  await page.getByRole('button', { name: 'Drop zeta(4) and search again' }).click();
+  await page.getByRole('button', { name: 'Leave out zeta(4) and search again' }).click();
   await expect(verdict(page)).toContainText('Holds');
-  await expect(page.locator('.typed')).toHaveText('17*pi^4/360');
+  await expect(typed(page)).toHaveText('17*pi^4/360');
 });
 
 test('bad input: one sentence each, and nothing is lost', async ({ page }) => {
   await page.goto('/');
-  const digits = page.getByLabel('Digits', { exact: true });
-  const before = await digits.inputValue();
-  const note = page.locator('.note.wrong[role="alert"]').first();
+  await page.getByRole('button', { name: 'Edit digits' }).click();
+  const before = await digits(page).inputValue();
+  const note = page.locator('.note.wrong:not(:empty)');
   for (const [text, said] of [
     ['abc', /“a” at line 1, column 1 is a letter/],
     ['1.2.3', /second decimal point/],
@@ -96,43 +87,49 @@ test('bad input: one sentence each, and nothing is lost', async ({ page }) => {
     ['0.0000', /zero/],
     ['1.2', /too little/],
   ] as const) {
-    await digits.fill(text);
+    await digits(page).fill(text);
     await expect(note).toHaveText(said);
     await expect(search(page)).toBeDisabled();
   }
-  await digits.evaluate((element, text) => {
+  await digits(page).evaluate((element, text) => {
     const setter = Object.getOwnPropertyDescriptor(HTMLTextAreaElement.prototype, 'value')?.set;
     setter?.call(element, text);
     element.dispatchEvent(new Event('input', { bubbles: true }));
   }, '7'.repeat(10_000_000));
-  await expect(note).toHaveText(/longer than 200000 digits/);
-  await digits.fill('');
+  await expect(page.getByText(/longer than 200,000 digits/)).toBeVisible();
+  await expect(digits(page)).toHaveValue('1.2');
+  await digits(page).fill('');
   await expect(search(page)).toBeDisabled();
-  for (let k = 0; k < 9 && (await digits.inputValue()) !== before; k++)
+  for (let k = 0; k < 9 && (await digits(page).inputValue()) !== before; k++)
     await page.getByRole('button', { name: 'Undo' }).click();
-  await expect(digits).toHaveValue(before);
+  await expect(digits(page)).toHaveValue(before);
 
-  await page.getByLabel('Add a constant').fill('zetta(3)');
+  const constant = page.getByLabel('Type a constant');
+  await constant.fill('zetta(3)');
   await page.getByRole('button', { name: 'Add', exact: true }).click();
-  await expect(page.getByText(/no constant or function called “zetta”.*zeta.*column 1/)).toBeVisible();
-  await expect(page.getByLabel('Add a constant')).toHaveValue('zetta(3)');
+  await expect(page.getByText(/“zetta”.*column 1/)).toBeVisible();
+  await expect(constant).toHaveValue('zetta(3)');
+  await page.getByLabel('Divide by').fill('sqrt(');
+  await expect(page.getByText(/column 6|column 5|never closed/)).toBeVisible();
 });
 
 test('few digits for the basis: warned before, no relation after', async ({ page }) => {
   await freshValue(page, '0.7391823');
-  await page.getByRole('button', { name: /up to weight 4/ }).click();
-  await expect(page.locator('.budget')).toContainText('Too few');
+  await readySpace(page, 4);
+  await expect(page.getByTestId('budget')).toContainText('a hit would mean nothing');
   await search(page).click();
   await expect(verdict(page)).toContainText(/Inconclusive|Excluded/);
 });
 
 test('a long search shows progress, can be cancelled, and never blocks the page', async ({ page }) => {
-  const digits = Array.from({ length: 1500 }, (_, k) => (k * k * 7 + ((k * 31) % 17) + (k ** 3 % 13)) % 10).join('');
-  await freshValue(page, `0.${digits}`);
-  await page.getByText('Choose a space').click();
+  const text = Array.from({ length: 1500 }, (_, k) => (k * k * 7 + ((k * 31) % 17) + (k ** 3 % 13)) % 10).join('');
+  await freshValue(page, `0.${text}`);
+  await page.getByText('Other spaces').click();
+  await page.getByLabel('Space', { exact: true }).selectOption('alternating');
   await page.getByLabel('Weight').selectOption('6');
-  await page.getByRole('button', { name: 'Use this space' }).click();
-  await expect(page.locator('.chip .katex').first()).toBeVisible();
+  await page.getByLabel('and all lower weights').check();
+  await page.getByRole('button', { name: 'Use these' }).click();
+  await expect(page.locator('.chip .katex')).toHaveCount(33);
   await page.evaluate(() => {
     const seen: number[] = [];
     Object.assign(globalThis, { longTasks: seen });
@@ -142,17 +139,32 @@ test('a long search shows progress, can be cancelled, and never blocks the page'
   });
   await search(page).click();
   await expect(page.getByText('Digits consumed')).toBeVisible();
-  await expect(page.locator('.facts dd').filter({ hasText: '%' })).toBeVisible({ timeout: 30_000 });
-  await page.waitForTimeout(800);
+  await expect(page.locator('.facts dd').first()).toHaveText(/^[1-9]\d* of 1275$/, { timeout: 40_000 });
+  await expect(page.locator('.facts .power')).toBeVisible({ timeout: 20_000 });
+  await page.waitForTimeout(1000);
   const started = Date.now();
   await page.getByRole('button', { name: 'Cancel' }).click();
   await expect(search(page)).toBeVisible();
   expect(Date.now() - started).toBeLessThan(1500);
+  await expect(page.getByRole('status')).toHaveText('Search cancelled.');
   const longTasks = await page.evaluate(() => (globalThis as unknown as { longTasks: number[] }).longTasks);
-  expect(longTasks.filter((ms) => ms > 200)).toEqual([]);
   test
     .info()
     .annotations.push({ type: 'long tasks (ms)', description: longTasks.map(Math.round).join(', ') || 'none' });
+  expect(longTasks.filter((ms) => ms > 50)).toEqual([]);
+});
+
+test('ten thousand digits: only the lines in sight are drawn, and the end is reached', async ({ page }) => {
+  const text = Array.from({ length: 10_000 }, (_, k) => (k * k * 7 + ((k * 31) % 17) + (k ** 3 % 13)) % 10).join('');
+  await freshValue(page, `1.${text}`);
+  const strip = page.getByLabel('Digits, scrollable');
+  await expect(strip.locator('.hundred-number').nth(1)).toHaveText('100');
+  expect(await strip.locator('.hundred').count()).toBeLessThan(20);
+  await strip.focus();
+  await page.keyboard.press('End');
+  await expect(strip.locator('.hundred-number').last()).toHaveText('10000');
+  await expect(strip.locator('.hundred').last()).toContainText(text.slice(-1));
+  await expect(page.locator('.figures').first()).toContainText('10,001 digits');
 });
 
 test('a saved basis set serves another value after a reload', async ({ page }) => {
@@ -163,44 +175,43 @@ test('a saved basis set serves another value after a reload', async ({ page }) =
   await saved(page);
   await page.reload();
   await page.getByRole('button', { name: 'New value' }).click();
-  await page.getByRole('button', { name: 'Clear all' }).click();
+  await page.getByRole('button', { name: 'Clear the basis' }).click();
+  await expect(page.locator('.chip')).toHaveCount(0);
   await page.getByText(/Basis sets/).click();
-  await page
-    .getByRole('button', { name: /weight four/ })
-    .first()
-    .click();
+  await page.getByRole('button', { name: /^weight four/ }).click();
   await expect(page.locator('.chip')).toHaveCount(12);
 });
 
-test('a second tab cannot silently overwrite', async ({ page, context }) => {
+test('two tabs on one project: each sees what the other saved', async ({ page, context }) => {
+  const name = 'Name of the value';
   await page.goto('/');
-  await page.getByLabel('Name', { exact: true }).fill('first tab');
   await saved(page);
   const other = await context.newPage();
   await other.goto('/');
-  await other.getByLabel('Name', { exact: true }).fill('second tab');
-  await expect(other.getByText('Saved in this browser')).toBeVisible();
-  await page.getByLabel('Name', { exact: true }).fill('first tab again');
-  await expect(page.getByText(/changed in another tab/)).toBeVisible();
-  await page.getByRole('button', { name: 'Load the newer state' }).click();
-  await expect(page.getByLabel('Name', { exact: true })).toHaveValue('second tab');
+  await other.getByLabel(name).fill('from the second tab');
+  await saved(other);
+  await expect(page.getByLabel(name)).toHaveValue('from the second tab');
+  await page.getByLabel(name).fill('from the first tab');
+  await saved(page);
+  await expect(other.getByLabel(name)).toHaveValue('from the first tab');
 });
 
 test('by keyboard alone: new value, digits, space, search, copy', async ({ page }) => {
   await page.goto('/');
-  const press = async (name: RegExp | string, role: 'button' = 'button') => {
-    await page.getByRole(role, { name }).first().focus();
-    await page.keyboard.press('Enter');
-  };
-  await press('New value');
-  await page.getByLabel('Digits', { exact: true }).focus();
+  await expect(search(page)).toBeVisible();
+  await page.keyboard.press('Alt+N');
+  await expect(digits(page)).toBeFocused();
   await page.keyboard.insertText(problem('qed-two-loop').value);
-  await press(/up to weight 3/);
+  // Digits, fold, trusted digits, divide by, then the weights of the ready space.
+  for (let k = 0; k < 6; k++) await page.keyboard.press('Tab');
+  await expect(page.getByRole('group', { name: /up to weight/ }).getByRole('button', { name: '3' })).toBeFocused();
+  await page.keyboard.press('Enter');
   await page.keyboard.press('Control+Enter');
   await expect(verdict(page)).toContainText('Holds');
-  await press('Copy text');
+  await page.getByRole('button', { name: 'Copy text' }).focus();
+  await page.keyboard.press('Enter');
+  await expect(page.getByRole('status')).toHaveText('text copied.');
   expect(await page.evaluate(() => navigator.clipboard.readText())).toContain('197/144');
-  await expect(page.getByRole('status')).toHaveText(/copied/);
 });
 
 test('nothing is asked of any other host', async ({ page, baseURL }) => {

@@ -2,6 +2,7 @@
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { expect, type Page, test } from '@playwright/test';
+import { digits, search, verdict } from './walk.ts';
 
 const axe = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 const sizes = [
@@ -23,38 +24,54 @@ async function objections(page: Page): Promise<string[]> {
 
 for (const size of sizes) {
   for (const theme of themes) {
-    test(`first visit and result, ${size.name} ${theme}`, async ({ page }) => {
+    test(`every state, ${size.name} ${theme}`, async ({ page }) => {
+      const look = async (name: string): Promise<void> => {
+        await page.evaluate(() => scrollTo(0, 0));
+        await page.screenshot({ path: `test-results/screens/${name}-${size.name}-${theme}.png`, fullPage: true });
+        expect(await objections(page)).toEqual([]);
+        const sideways = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
+        expect(sideways).toBeLessThanOrEqual(0);
+      };
+      const open = (name: RegExp) => page.locator('.value-button').filter({ hasText: name }).click();
       await page.setViewportSize(size);
       await page.emulateMedia({ colorScheme: theme });
       await page.goto('/');
-      await expect(page.getByRole('heading', { name: 'Value' })).toBeVisible();
-      await page.waitForSelector('.chip .katex');
-      const shot = (name: string) =>
-        page.screenshot({ path: `test-results/screens/${name}-${size.name}-${theme}.png`, fullPage: true });
-      await shot('first');
-      expect(await objections(page)).toEqual([]);
-      await page.getByRole('button', { name: 'Search', exact: true }).click();
-      await expect(page.locator('.verdict')).toContainText('Holds');
+      await expect(page.locator('.chip .katex')).toHaveCount(12);
+      await look('first');
+      await search(page).click();
+      await expect(verdict(page)).toContainText('Holds');
       await page.waitForSelector('.expression .katex');
-      await shot('holds');
-      expect(await objections(page)).toEqual([]);
-      await page
-        .getByRole('button', { name: /Plover graph/ })
-        .first()
-        .click();
-      await page.getByRole('button', { name: 'Search', exact: true }).click();
-      await expect(page.locator('.verdict')).toContainText('Excluded below');
-      await shot('excluded');
-      await page
-        .getByRole('button', { name: /Dunlin graph/ })
-        .first()
-        .click();
-      await page.getByRole('button', { name: 'Search', exact: true }).click();
-      await expect(page.locator('.verdict')).toContainText('look wrong');
-      await shot('wrong-tail');
-      expect(await objections(page)).toEqual([]);
-      const sideways = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
-      expect(sideways).toBeLessThanOrEqual(0);
+      await look('holds');
+      await page.getByLabel('Trusted digits').fill('100');
+      await expect(page.getByText('belongs to an earlier state')).toBeVisible();
+      await look('stale');
+      await open(/Plover/);
+      await search(page).click();
+      await expect(verdict(page)).toContainText('Excluded');
+      await look('excluded');
+      await open(/Dunlin/);
+      await search(page).click();
+      await expect(verdict(page)).toContainText('look wrong');
+      await look('wrong-tail');
+      await page.getByRole('button', { name: 'New value' }).click();
+      await digits(page).fill('0.12345x');
+      await look('bad-input');
+      await page.getByRole('button', { name: 'Keys' }).click();
+      await look('keys');
     });
   }
 }
+
+test('the theme switch overrides the system and survives a reload', async ({ page }) => {
+  const ground = () => page.evaluate(() => getComputedStyle(document.documentElement).backgroundColor);
+  await page.emulateMedia({ colorScheme: 'light' });
+  await page.goto('/');
+  const light = await ground();
+  await page.getByLabel('Theme').selectOption('dark');
+  const dark = await ground();
+  expect(dark).not.toBe(light);
+  await page.reload();
+  expect(await ground()).toBe(dark);
+  await page.getByLabel('Theme').selectOption('system');
+  expect(await ground()).toBe(light);
+});

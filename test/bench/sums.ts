@@ -32,7 +32,9 @@ const sumWords = (key: string): string[] =>
         .replace(/^zeta\((\d+)\)$/, 'zeta(-$1)')
         .replace(/^Li\(4,1\/2\)$/, 'zeta(-3,1)')
         .replace(/^Li\(5,1\/2\)$/, 'zeta(-3,1,1)')
-        .replace(/^Li\(6,1\/2\)$/, 'zeta(-3,1,1,1)'),
+        .replace(/^Li\(6,1\/2\)$/, 'zeta(-3,1,1,1)')
+        .replace(/^Li\(7,1\/2\)$/, 'zeta(-3,1,1,1,1)')
+        .replace(/^Li\(8,1\/2\)$/, 'zeta(-3,1,1,1,1,1)'),
     )
     .filter((text) => /^(zeta|MPL)/.test(text));
 

@@ -25,7 +25,15 @@ export interface EngineTasks {
   /** Digits of a typed constant, correctly rounded. */
   evaluate: {
     request: { text: string; digits: number };
-    response: { digits: string; imaginary: string | null; latex: string; weight: number | null };
+    response: {
+      digits: string;
+      /** Imaginary part of a complex constant, to the same place as the real part. */
+      imaginary: string | null;
+      latex: string;
+      weight: number | null;
+      /** Key of the family, for a single constant. */
+      family: string | null;
+    };
     progress: { fraction: number };
   };
   /** Check typed constants and expand spaces without computing digits. */

@@ -1,12 +1,15 @@
 /** What each task does; importable without a worker. */
 import type { ConstantCache } from '../constants/cache.ts';
 import { evaluateMany, evaluateTerm, weightOf } from '../constants/evaluate.ts';
+import { familyOf } from '../constants/registry.ts';
+import { isOperation } from '../constants/structure.ts';
 import type { Term } from '../constants/term.ts';
 import { toLatex } from '../expression/print-latex.ts';
-import { type Ball, magnitude } from '../number/ball.ts';
+import { type Ball, fromInteger, fromRational, magnitude, sign, subtract, timesPowerOfTwo } from '../number/ball.ts';
 import { isComplex, type Value } from '../number/complex.ts';
-import { formatBall } from '../number/decimal.ts';
+import { formatBall, parseDecimal } from '../number/decimal.ts';
 import { InputError, PrecisionError } from '../number/errors.ts';
+import { absolute, log10Of } from '../number/integer.ts';
 import { readTyped, resolveBasis } from '../search/basis.ts';
 import { catalogue } from '../search/catalogue.ts';
 import { checkRecord } from '../search/check.ts';
@@ -54,7 +57,7 @@ export function evaluateToDigits(
     const value = evaluateTerm(term, bits, context);
     try {
       const parts = partsOf(value, digits);
-      return { ...parts, latex: toLatex(term), weight: weightOf(term) };
+      return { ...parts, latex: toLatex(term), weight: weightOf(term), family: familyKey(term) };
     } catch (error) {
       if (!(error instanceof PrecisionError)) throw error;
       if (round >= 6)
@@ -62,19 +65,48 @@ export function evaluateToDigits(
           'undecided',
           `${text} cannot be told from zero or from a rounding boundary at ${Math.floor(bits / LOG2_10)} digits; it may be exactly that.`,
         );
-      const small = Math.max(0, -Math.min(...(isComplex(value) ? [value.re, value.im] : [value]).map(sizeBits)));
+      const small = Math.max(0, -Math.max(...(isComplex(value) ? [value.re, value.im] : [value]).map(sizeBits)));
       bits += 64 * 2 ** round + Math.min(small, bits);
     }
   }
+}
+
+function familyKey(term: Term): string | null {
+  const single = (term.kind === 'symbol' || term.kind === 'call') && !isOperation(term);
+  return single ? familyOf(term).family.key : null;
 }
 
 function sizeBits(x: Ball): number {
   return Math.max(-1e6, magnitude(x));
 }
 
+/**
+ * A complex number is rounded as a whole: its larger part to `digits` significant digits, the other to the same place,
+ * where it may be 0.
+ */
 function partsOf(value: Value, digits: number): { digits: string; imaginary: string | null } {
   if (!isComplex(value)) return { digits: formatBall(value, digits), imaginary: null };
-  return { digits: formatBall(value.re, digits), imaginary: formatBall(value.im, digits) };
+  const [re, im] = [value.re, value.im];
+  const lead = sizeBits(re) >= sizeBits(im) ? re : im;
+  const place = leadingPlace(lead, digits);
+  const part = (x: Ball): string => (x === lead ? formatBall(x, digits) : formatToPlace(x, place));
+  return { digits: part(re), imaginary: part(im) };
+}
+
+/** Exponent of the last of `digits` significant digits of x. */
+function leadingPlace(x: Ball, digits: number): number {
+  const decimal = parseDecimal(formatBall(x, digits));
+  return absolute(decimal.coefficient).toString().length + decimal.exponent - digits;
+}
+
+/** x rounded to a multiple of 10^place; `0` when it rounds to that. Throws PrecisionError when the ball does not determine it. */
+function formatToPlace(x: Ball, place: number): string {
+  const halfUnit = place >= 0 ? fromInteger(10n ** BigInt(place)) : fromRational(1n, 10n ** BigInt(-place), x.bits + 8);
+  const half = timesPowerOfTwo(halfUnit, -1);
+  const size = { mid: absolute(x.mid), rad: x.rad, bits: x.bits };
+  if (sign(subtract(half, size)) === 1) return '0';
+  const known = Math.floor(log10Of(x.mid) - x.bits / LOG2_10 + 1e-9) + 1;
+  return formatBall(x, Math.max(1, known - place));
 }
 
 export const tasks: Tasks = {

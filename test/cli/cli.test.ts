@@ -46,6 +46,17 @@ describe('digit-assay', () => {
     }
   });
 
+  it('evaluate rounds a complex constant as a whole, a vanishing part to 0', () => {
+    // Li_2(i) = −π²/48 + iG (Lewin 1981).
+    expect(run(['evaluate', 'Li(2,i)', '--digits', '20']).out.split('\n')).toEqual([
+      '-0.20561675835602830456',
+      '0.91596559417721901505',
+      '',
+    ]);
+    expect(run(['evaluate', 'i*pi + 0*r6', '--digits', '10']).out.split('\n')).toEqual(['0', '3.141592654', '']);
+    expect(run(['evaluate', 'r3 + 1/2', '--digits', '10']).out.split('\n')).toEqual(['0', '0.8660254038', '']);
+  });
+
   it('constants lists families and spaces', () => {
     const all = JSON.parse(run(['constants']).out);
     expect(all.families.length).toBeGreaterThan(5);

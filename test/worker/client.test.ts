@@ -23,7 +23,7 @@ function handWorked() {
 }
 
 const request = { text: 'pi', digits: 5 };
-const response = { digits: '3.1416', imaginary: null, latex: '\\pi', weight: 1 };
+const response = { digits: '3.1416', imaginary: null, latex: '\\pi', weight: 1, family: 'pi' };
 
 describe('the engine client', () => {
   it('passes responses and progress', async () => {

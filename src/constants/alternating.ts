@@ -43,7 +43,11 @@ export function alternatingSums(
 ): bigint[][] {
   const n = termCount(work);
   const d = chebyshevAtThree(n);
-  const powers = exponents.map(BigInt);
+  // By ascending exponent each further division is by a small power: ⌊⌊c/a⌋/b⌋ = ⌊c/(ab)⌋ loses nothing more.
+  const order = exponents.map((_, e) => e).sort((x, y) => (exponents[x] as number) - (exponents[y] as number));
+  const steps = order.map((e, j) =>
+    BigInt((exponents[e] as number) - (j === 0 ? 0 : (exponents[order[j - 1] as number] as number))),
+  );
   const sums = exponents.map(() => residues.map(() => 0n));
   let b = -1n;
   let c = -d;
@@ -51,9 +55,11 @@ export function alternatingSums(
     c = b - c;
     for (let r = 0; r < residues.length; r++) {
       const base = BigInt(period * k + (residues[r] as number));
-      for (let e = 0; e < powers.length; e++) {
-        const row = sums[e] as bigint[];
-        row[r] = (row[r] as bigint) + c / base ** (powers[e] as bigint);
+      let share = c;
+      for (let j = 0; j < order.length; j++) {
+        share /= base ** (steps[j] as bigint);
+        const row = sums[order[j] as number] as bigint[];
+        row[r] = (row[r] as bigint) + share;
       }
     }
     b = (b * BigInt(2 * (k + n) * (k - n))) / BigInt((2 * k + 1) * (k + 1));

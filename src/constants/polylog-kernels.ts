@@ -9,11 +9,21 @@
  * downward by 1/z. A step adds at most ε = 3 + √|d| units: two truncations, and the error of a multiplier kept to more bits
  * than c has. The factor has modulus at most 1 (1 + 10⁻¹² allowed for, a factor 2 at the end), so c errs by less than
  * 2((n + 1)ε + e₀) with e₀ the error of the start P(1/z) (a ball); the sum over k by (1 + ln n) times that plus nε. These radii
- * go through ball arithmetic to the result.
+ * go through ball arithmetic to the result. For a real root the coordinates may grow as the conjugate of z does, and cancel in
+ * u + v√d; that costs length, not accuracy, since truncation errors are multiplied by z alone.
  * **Direct sum** for rationals |x| ≤ 0.7: a power errs by less than 1/(1 − |x|) < 4 units, a summand by less than 5, the tail
  * is less than |x|^N/(1 − |x|), made less than one unit.
  */
-import { type Ball, fromInteger, multiply as multiplyReal, negate, sqrt, widen, withBits } from '../number/ball.ts';
+import {
+  add as addReal,
+  type Ball,
+  fromInteger,
+  multiply as multiplyReal,
+  negate,
+  sqrt,
+  widen,
+  withBits,
+} from '../number/ball.ts';
 import { add, divide, isComplex, multiply, subtract, toComplex, type Value } from '../number/complex.ts';
 import { absolute, bitLength, integerSqrt } from '../number/integer.ts';
 import type { EvaluationContext } from './family.ts';
@@ -26,7 +36,7 @@ export interface ExactPoint {
   readonly root: bigint;
 }
 
-/** A point off the cut [1, ∞): doubles for choosing, values for computing, and the exact form where there is a small one with a root that is not positive. */
+/** A point off the cut [1, ∞): doubles for choosing, values for computing, and the exact form where there is a small one. */
 export interface Point {
   readonly re: number;
   readonly im: number;
@@ -166,7 +176,8 @@ function upward(
   const re = withBits(start.re, fraction);
   const im = withBits(start.im, fraction);
   let p = 1n << BigInt(fraction);
-  const v = m.beta === 0n ? 0n : overRoot(im.mid, m.root);
+  // A real number has many coordinates over 1, √root; any will do.
+  const v = m.beta === 0n || m.root > 0n ? 0n : overRoot(im.mid, m.root);
   const c = new Recurrence(m, d, re.mid - p, v);
   c.collect(0);
   for (let k = 1; k < n; k++) {
@@ -216,13 +227,14 @@ function stepError(m: Multiplier): number {
   return 3 + Math.sqrt(Number(absolute(m.root)));
 }
 
-/** u + v√root in units of 2^−fraction, each coordinate within `error`/√|root| of the truth. */
+/** u + v√root in units of 2^−fraction, given that u + v√root is within `error` of the truth. */
 function coordinates(u: bigint, v: bigint, m: Multiplier, error: bigint, fraction: number): Value {
   const re: Ball = { mid: u, rad: error, bits: fraction };
   if (m.beta === 0n) return re;
   const size = bitLength(v) + fraction + 8;
-  const im: Ball = { mid: v, rad: 0n, bits: fraction };
-  const scaled = m.root === -1n ? im : multiplyReal(im, sqrt(fromInteger(-m.root), size), fraction);
+  const other: Ball = { mid: v, rad: 0n, bits: fraction };
+  const scaled = m.root === -1n ? other : multiplyReal(other, sqrt(fromInteger(absolute(m.root)), size), fraction);
+  if (m.root > 0n) return addReal(re, scaled);
   return { re, im: widen(withBits(scaled, fraction), error) };
 }
 

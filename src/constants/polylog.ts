@@ -107,14 +107,18 @@ export function pointOf(x: Term): Point {
   };
 }
 
-/** Integer coordinates of a rational or an imaginary quadratic number, unless they are so large that rounded ones are as good. */
+/** Integer coordinates of a rational or quadratic number, unless they are so large, or the conjugate so far outside the unit circle (or, for 1/x, so far inside), that rounded ones are as good. */
 function exactPoint(x: Quadratic | null): Point['exact'] {
-  if (x === null || x.d > 1n) return null;
+  if (x === null) return null;
   const gamma = x.a.q * x.b.q;
   const alpha = x.a.p * x.b.q;
   const beta = x.b.p * x.a.q;
   const large = [gamma, alpha, beta, x.d].some((n) => n > 1n << 30n || n < -(1n << 30n));
-  return large ? null : { alpha, beta, gamma, root: x.b.p === 0n ? -1n : x.d };
+  if (large) return null;
+  if (x.b.p === 0n) return { alpha, beta, gamma, root: -1n };
+  const conjugate = Math.abs((Number(alpha) - Number(beta) * Math.sqrt(Math.max(0, Number(x.d)))) / Number(gamma));
+  if (x.d > 0n && (conjugate > 4 || conjugate < 0.25)) return null;
+  return { alpha, beta, gamma, root: x.d };
 }
 
 /** Li_s at e^{iθ}: the Clausen part and the Bernoulli part. */

@@ -192,11 +192,18 @@ export function atan2(y: Ball, x: Ball, bits: number): Ball {
   throw new PrecisionError('atan2: the angle cannot be told at this precision');
 }
 
+/** Above this degree exp and log are faster than Newton's iteration on the power. */
+const LARGEST_NEWTON = 16;
+
 /** The positive n-th root of a non-negative ball, n ≥ 1. Throws as `sqrt` does. */
 export function root(x: Ball, n: number, bits: number): Ball {
   if (!Number.isInteger(n) || n < 1) throw new RangeError(`root: expected a positive integer degree, got ${n}`);
   if (x.mid + x.rad < 0n) throw new RangeError('root: expected a non-negative number');
   if (x.mid - x.rad < 0n) throw new PrecisionError('root: the argument cannot be told from a negative number');
+  if (n > LARGEST_NEWTON && x.mid > x.rad) {
+    const work = bits + 8 + Math.max(0, Math.ceil(magnitude(x) / n));
+    return exp(divide(log(x, work), { mid: BigInt(n), rad: 0n, bits: 0 }, work), bits);
+  }
   const scaled = (value: bigint): bigint => {
     const shift = n * bits - x.bits;
     return shift >= 0 ? value << BigInt(shift) : value >> BigInt(-shift);
@@ -208,23 +215,30 @@ export function root(x: Ball, n: number, bits: number): Ball {
   return { mid, rad: high - mid, bits };
 }
 
-/** ⌊value^(1/n)⌋ for value ≥ 0, by Newton's iteration from above on doubling precision. */
+/** ⌊value^(1/n)⌋ for value ≥ 0 and n ≥ 1. */
 export function integerRoot(value: bigint, n: number): bigint {
   if (n === 1 || value < 2n) return value;
-  if (n === 2) return integerSqrt(value);
-  const length = bitLength(value);
+  if (n % 2 === 0) return integerRoot(integerSqrt(value), n / 2);
+  let root = rootFromAbove(value, n);
+  while (root ** BigInt(n) > value) root -= 1n;
+  return root;
+}
+
+/**
+ * The root or a few units more, by Newton's iteration on doubling precision: a step from above stays above (the arithmetic mean
+ * is not less than the geometric one), and one step from half the bits and 8 more leaves less than a unit besides rounding.
+ */
+function rootFromAbove(value: bigint, n: number): bigint {
   const degree = BigInt(n);
-  let guess: bigint;
-  if (length <= 2 * n + 50) guess = 1n << BigInt(Math.floor((length - 1) / n) + 1);
-  else {
-    const drop = Math.floor(length / (2 * n));
-    guess = (integerRoot(value >> BigInt(drop * n), n) + 1n) << BigInt(drop);
+  const length = bitLength(value);
+  const step = (guess: bigint): bigint => ((degree - 1n) * guess + value / guess ** (degree - 1n)) / degree;
+  if (length <= (24 + Math.log2(n)) * n) {
+    let guess = 1n << BigInt(Math.floor((length - 1) / n) + 1);
+    for (let next = step(guess); next < guess; next = step(guess)) guess = next;
+    return guess;
   }
-  for (;;) {
-    const next = ((degree - 1n) * guess + value / guess ** (degree - 1n)) / degree;
-    if (next >= guess) return guess;
-    guess = next;
-  }
+  const drop = Math.floor(length / (2 * n)) - 4 - Math.ceil(Math.log2(n) / 2);
+  return step((rootFromAbove(value >> BigInt(drop * n), n) + 1n) << BigInt(drop));
 }
 
 /**

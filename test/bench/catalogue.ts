@@ -2,9 +2,9 @@
  * Each family at 100, 1,000 and 5,000 digits against PARI/GP in the same run:
  * node .ci/run-ts.mjs test/bench/catalogue.ts [most digits = 5000] [part of a name]
  *
- * Both sides: one warming evaluation, then the least of several timed ones. π, e and γ are kept by PARI/GP once computed, so for those
- * its first call in a fresh process is timed, and ours without any memory but what one evaluation builds. A ratio under 1 means
- * faster than PARI/GP.
+ * CPU time on both sides, the least of three batches of at least 100 ms after a warming one; ours includes the collection of garbage on
+ * other threads. π, γ and Catalan's constant are kept by PARI/GP once computed, so there it is timed at twenty growing precisions
+ * around the one named. A ratio under 1 means faster than PARI/GP.
  */
 import { spawnSync } from 'node:child_process';
 import { evaluateMany } from '../../src/constants/evaluate.ts';
@@ -88,17 +88,23 @@ const rows: readonly Row[] = [
   { name: 'binsum(4)', ours: ['binsum(4)'], pari: 'suminf(n=1,1./(n^4*binomial(2*n,n)))', pariDigits: 1000 },
 ];
 
-/** Milliseconds of one run: the least of several, within about half a second. */
+/** CPU milliseconds of this process, all threads. */
+function cpu(): number {
+  const { user, system } = process.cpuUsage();
+  return (user + system) / 1000;
+}
+
+/** CPU milliseconds of one run: the least of three batches of at least 100 ms, after a warming one. */
 function timeOurs(run: () => unknown): number {
-  run();
-  let least = Number.POSITIVE_INFINITY;
-  const start = performance.now();
+  let count = 1;
   let sink = 0;
-  for (let k = 0; k < 200 && (k < 2 || performance.now() - start < 400); k++) {
-    const from = performance.now();
-    sink += run() === undefined ? 0 : 1;
-    least = Math.min(least, performance.now() - from);
-  }
+  const batch = (): number => {
+    const from = cpu();
+    for (let k = 0; k < count; k++) sink += run() === undefined ? 0 : 1;
+    return cpu() - from;
+  };
+  for (let spent = batch(); spent < 100 && count < 16384; spent = batch()) count *= 2;
+  const least = (count === 1 ? batch() : Math.min(batch(), batch(), batch())) / count;
   if (sink === 0) throw new Error('nothing was computed');
   return least;
 }
@@ -117,10 +123,9 @@ function timePari(list: readonly { row: Row; digits: number }[]): (number | null
   const times: (number | null)[] = list.map(() => null);
   const repeated = list.flatMap(({ row, digits }, j) => {
     if (row.once === true) return [];
-    // Least of three batches; a batch is as many calls as fit in 60 ms.
     return [
       `default(realprecision,${digits});f()=${row.pari}`,
-      `f();{n=1;while(1,t=getwalltime();for(i=1,n,f());t=getwalltime()-t;if(t>=60||n>=16384,break);n*=2);b=t/n;for(k=1,2,t=getwalltime();for(i=1,n,f());b=min(b,(getwalltime()-t)/n));print("${j}|",b*1000000\\1)}`,
+      `f();{n=1;while(1,gettime();for(i=1,n,f());t=gettime();if(t>=100||n>=65536,break);n*=2);b=t/n;for(k=1,2,gettime();for(i=1,n,f());b=min(b,gettime()/n));print("${j}|",b*1000000\\1)}`,
     ];
   });
   const script = `default(parisizemax,"4G");\n${repeated.join('\n')}\nquit\n`;
@@ -132,12 +137,11 @@ function timePari(list: readonly { row: Row; digits: number }[]): (number | null
   }
   list.forEach(({ row, digits }, j) => {
     if (row.once !== true) return;
-    const once = `default(realprecision,${digits});\n{my(x);localbitprec(64);t=getabstime();}\ngettime();t=getwalltime();x=${row.pari};t=getwalltime()-t;print("${j}|",t)\nquit\n`;
-    const measured = [1, 2, 3].map(() => {
-      const single = spawnSync('gp', ['-q'], { input: once, encoding: 'utf8' });
-      return Number(/\|(\d+)/.exec(single.stdout)?.[1]);
-    });
-    times[j] = Math.min(...measured);
+    // The precision grows by a word each time, so that the value is computed anew: the mean over twenty around `digits`.
+    const first = Math.max(20, digits - 200);
+    const once = `default(realprecision,${first});\n{gettime();for(k=1,20,localprec(${first}+20*k);${row.pari});print("${j}|",gettime()*50000)}\nquit\n`;
+    const single = spawnSync('gp', ['-q'], { input: once, encoding: 'utf8' });
+    times[j] = Number(/\|(\d+)/.exec(single.stdout)?.[1]) / 1e6;
   });
   return times;
 }
@@ -151,7 +155,9 @@ const pariTimes = timePari(plan);
 const show = (ms: number | null | undefined): string =>
   ms === null || ms === undefined ? '–' : ms < 10 ? ms.toPrecision(2) : ms.toFixed(0);
 
-console.log(`${'milliseconds ours / PARI/GP (ratio)'.padEnd(38)}${sizes.map((d) => `${d} digits`.padEnd(26)).join('')}target`);
+console.log(
+  `${'milliseconds ours / PARI/GP (ratio)'.padEnd(38)}${sizes.map((d) => `${d} digits`.padEnd(26)).join('')}target`,
+);
 let missed = 0;
 for (const row of chosen) {
   let line = row.name.padEnd(38);

@@ -2,18 +2,14 @@
 import { log10Of } from '../number/integer.ts';
 import type { Prepared } from './prepare.ts';
 
-/** x̂ᵀx̂ over the given rows (all by default): entry (j, k) is the product of columns j and k of the integers. */
-export function columnGram(prepared: Prepared, rows: Iterable<number> = prepared.integers.keys()): bigint[][] {
-  const gram = prepared.columns.map(() => prepared.columns.map(() => 0n));
-  for (const i of rows) addRow(gram, prepared.integers[i] as readonly bigint[]);
-  return gram;
+/** x̂ᵀx̂: entry (j, k) is the product of columns j and k of the integers. */
+export function columnGram(prepared: Prepared): bigint[][] {
+  return prepared.integers.reduce<bigint[][] | undefined>(plusRow, undefined) as bigint[][];
 }
 
-/** Adds what one more row contributes. */
-export function addRow(gram: bigint[][], x: readonly bigint[]): void {
-  gram.forEach((row, j) => {
-    for (let k = 0; k < row.length; k++) row[k] = (row[k] as bigint) + (x[j] as bigint) * (x[k] as bigint);
-  });
+/** A Gram matrix of columns with one more row; from nothing when undefined. */
+export function plusRow(gram: readonly (readonly bigint[])[] | undefined, x: readonly bigint[]): bigint[][] {
+  return x.map((a, j) => x.map((b, k) => (gram?.[j]?.[k] ?? 0n) + a * b));
 }
 
 /** log10 of the determinant of a positive definite integer matrix, by fraction-free elimination (Bareiss, Math. Comp. 22 (1968) 565). */

@@ -12,7 +12,7 @@ import {
   log10Norm,
   primitive,
   SURPLUS_DIGITS,
-  surplusDigits,
+  surplusOf,
   withinErrors,
 } from './significance.ts';
 
@@ -23,7 +23,7 @@ const STEP_MILLISECONDS = 5;
  * Begins the search for an integer relation of `request.rows`. Throws InputError for rows that cannot be searched
  * (see `prepare`) and for a maxNormLog10 that is not a number ≥ 0.
  *
- * Guarantees: a 'relation' vanishes within the given balls, exactly, and is more than chance (see `surplusDigits`);
+ * Guarantees: a 'relation' vanishes within the given balls, exactly, and is more than chance (see `surplusOf`);
  * normBoundLog10 is proved (see `certifyNormBound`) for any numbers inside the balls. The outcome depends on the request only.
  */
 export function startRelation(request: RelationRequest): RelationRun {
@@ -67,8 +67,9 @@ function* search(
     return { kind: 'relation', coefficients, confidenceLog10, normBoundLog10: 0, iterations: 0 };
   }
   const maxNormLog10 = request.maxNormLog10 ?? Number.POSITIVE_INFINITY;
+  const surplus = surplusOf(prepared);
   const options: MethodOptions = {
-    accept: (c) => surplusDigits(prepared, c) >= SURPLUS_DIGITS && mayVanish(prepared.rows, c),
+    accept: (c) => surplus(c) >= SURPLUS_DIGITS && mayVanish(prepared.rows, c),
     maxNormLog10,
     bounded: (basis, weights) => certifyNormBound(prepared, basis, weights).normBoundLog10 >= maxNormLog10,
   };
@@ -86,7 +87,7 @@ function* search(
   const { iterations } = progress;
   if (end.coefficients === undefined) return negative(request, prepared, end, bound, iterations);
   const coefficients = primitive(end.coefficients);
-  const loose = undetermined(prepared, coefficients, end, residuals);
+  const loose = undetermined(prepared, coefficients, end, residuals, surplus);
   if (loose !== undefined) {
     const reason = `A relation shows, but its coefficients are not fixed: number ${loose + 1} is too small for what the uncertainties of the others leave open.`;
     return { kind: 'inconclusive', reason, normBoundLog10: bound.normBoundLog10, iterations };
@@ -121,6 +122,7 @@ function undetermined(
   coefficients: readonly bigint[],
   end: MethodEnd,
   residuals: readonly (readonly bigint[])[],
+  surplus: (coefficients: readonly bigint[]) => number,
 ): number | undefined {
   const allowed = errorsOf(prepared, coefficients);
   const small = prepared.integers.findIndex((x) => x.every((value, j) => absolute(value) <= (allowed[j] as bigint)));
@@ -135,7 +137,7 @@ function undetermined(
   const loose = end.basis.find((row, i) => {
     const y = residuals[i] as readonly bigint[];
     if (log10Norm(row) > norm || !(fits(1n, row, y) || fits(-1n, row, y))) return false;
-    return !withinErrors(prepared, row, y) || surplusDigits(prepared, row) < SURPLUS_DIGITS;
+    return !withinErrors(prepared, row, y) || surplus(row) < SURPLUS_DIGITS;
   });
   return loose?.findIndex((c) => c !== 0n);
 }

@@ -1,6 +1,6 @@
 /** Could this relation be chance? Counting arguments shared by both methods. */
 import { absolute, bitLength, log10Of } from '../number/integer.ts';
-import { addRow, columnGram, log10Determinant } from './gram.ts';
+import { log10Determinant, plusRow } from './gram.ts';
 import type { Prepared } from './prepare.ts';
 
 /**
@@ -29,27 +29,30 @@ export function log10BallVolume(n: number): number {
  * there is no chance about it.
  */
 export function surplusDigits(prepared: Prepared, coefficients: readonly bigint[]): number {
-  const errors = errorsOf(prepared, coefficients);
-  if (errors.every((e) => e === 0n)) return Number.POSITIVE_INFINITY;
-  const square = coefficients.reduce((sum, c) => sum + c * c, 0n);
-  const rows = [...prepared.integers.keys()].sort((a, b) => sizeOf(prepared, a) - sizeOf(prepared, b));
-  const least = Math.max(...coefficients.map((c, i) => (c === 0n ? 0 : rows.indexOf(i)))) + 1;
-  const gram = columnGram(prepared, rows.slice(0, least));
-  let surplus = surplusAmong(gram, least, square, errors);
-  for (let n = least + 1; n <= rows.length; n++) {
-    addRow(gram, prepared.integers[rows[n - 1] as number] as readonly bigint[]);
-    surplus = Math.min(surplus, surplusAmong(gram, n, square, errors));
-  }
-  return surplus;
+  return surplusOf(prepared)(coefficients);
 }
 
-/** Bits of the largest entry of a row over the errors of its column. */
-function sizeOf(prepared: Prepared, i: number): number {
-  return Math.max(
-    ...(prepared.integers[i] as readonly bigint[]).map(
-      (x, j) => bitLength(x) - (prepared.columnErrorBits[j] as number),
-    ),
+/** The same for many vectors over the same numbers: what depends on the numbers alone is worked out once. */
+export function surplusOf(prepared: Prepared): (coefficients: readonly bigint[]) => number {
+  const sizes = prepared.integers.map((row) =>
+    Math.max(...row.map((x, j) => bitLength(x) - (prepared.columnErrorBits[j] as number))),
   );
+  const order = [...sizes.keys()].sort((a, b) => (sizes[a] as number) - (sizes[b] as number));
+  const place = new Map(order.map((i, at) => [i, at]));
+  // grams[k] belongs to the k + 1 smallest numbers.
+  const grams: bigint[][][] = [];
+  for (const i of order) grams.push(plusRow(grams.at(-1), prepared.integers[i] as readonly bigint[]));
+  return (coefficients) => {
+    const errors = errorsOf(prepared, coefficients);
+    if (errors.every((e) => e === 0n)) return Number.POSITIVE_INFINITY;
+    const square = coefficients.reduce((sum, c) => sum + c * c, 0n);
+    const last = Math.max(...coefficients.map((c, i) => (c === 0n ? 0 : (place.get(i) as number))));
+    let surplus = Number.POSITIVE_INFINITY;
+    for (let k = last; k < grams.length; k++) {
+      surplus = Math.min(surplus, surplusAmong(grams[k] as bigint[][], k + 1, square, errors));
+    }
+    return surplus;
+  };
 }
 
 /** The surplus when n numbers with this Gram matrix of columns were offered. */

@@ -29,12 +29,28 @@ const COMBINATION_LIMIT = 200_000;
 
 /** The irreducible factors of a polynomial of positive degree. Yields between primes and between batches of trials. */
 export function* factorise(p: Polynomial): Generator<void, Factorisation, void> {
-  const square = commonDivisor(p, derivative(p));
-  const free = primitivePart(exactQuotient(primitivePart(p), square) as bigint[]);
+  const free = squareFree(primitivePart(p));
   if (degree(free) <= 1) return { factors: [free], proved: true };
   const best = yield* bestPrime(free);
   if (best === 'irreducible') return { factors: [free], proved: true };
   return yield* recombine(free, best.prime, best.parts);
+}
+
+/** The product of the different irreducible factors. A square-free image modulo one prime proves that nothing is to be done. */
+function squareFree(p: bigint[]): bigint[] {
+  let prime = FIRST_PRIME;
+  for (let tried = 0; tried < 5; prime = nextPrime(prime)) {
+    if ((p.at(-1) as bigint) % BigInt(prime) === 0n) continue;
+    if (squareFreeImage(p, prime) !== undefined) return p;
+    tried++;
+  }
+  return primitivePart(exactQuotient(p, commonDivisor(p, derivative(p))) as bigint[]);
+}
+
+/** p modulo the prime, made monic, if it is square-free there. */
+function squareFreeImage(p: Polynomial, prime: number): number[] | undefined {
+  const image = modular.monic(modular.reduceModulo(p, prime), prime);
+  return modular.commonDivisor(image, modular.derivative(image, prime), prime).length > 1 ? undefined : image;
 }
 
 type Parts = { degree: number; product: number[] }[];
@@ -47,8 +63,8 @@ function* bestPrime(f: Polynomial): Generator<void, 'irreducible' | { prime: num
   let prime = FIRST_PRIME;
   for (let tried = 0; tried < PRIMES_TRIED; prime = nextPrime(prime)) {
     if ((f.at(-1) as bigint) % BigInt(prime) === 0n) continue;
-    const image = modular.monic(modular.reduceModulo(f, prime), prime);
-    if (modular.commonDivisor(image, modular.derivative(image, prime), prime).length > 1) continue;
+    const image = squareFreeImage(f, prime);
+    if (image === undefined) continue;
     tried++;
     const parts = modular.distinctDegrees(image, prime);
     // Bit d of `sums` tells whether some of the factors have degrees that add up to d.
@@ -83,7 +99,7 @@ function coefficientBound(f: Polynomial): bigint {
 }
 
 function* recombine(f: Polynomial, prime: number, parts: Parts): Generator<void, Factorisation, void> {
-  let locals = parts.flatMap((part) => modular.equalDegree(part.product, part.degree, prime));
+  const locals = parts.flatMap((part) => modular.equalDegree(part.product, part.degree, prime));
   yield;
   const lifted = liftFactors(f, locals, prime, 2n * coefficientBound(f) * absolute(f.at(-1) as bigint) + 1n);
   const modulus = lifted.modulus;
@@ -116,7 +132,6 @@ function* recombine(f: Polynomial, prime: number, parts: Parts): Generator<void,
     else {
       const gone = new Set(found);
       pool = pool.filter((_, k) => !gone.has(k));
-      locals = locals.filter((_, k) => !gone.has(k));
     }
   }
   if (degree(rest) > 0) factors.push(rest);

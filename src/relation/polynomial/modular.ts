@@ -36,27 +36,32 @@ export function subtract(f: Residues, g: Residues, prime: number): number[] {
 
 export function multiply(f: Residues, g: Residues, prime: number): number[] {
   if (f.length === 0 || g.length === 0) return [];
-  const result = new Array<number>(f.length + g.length - 1).fill(0);
+  const result = new Float64Array(f.length + g.length - 1);
   for (let i = 0; i < f.length; i++) {
-    for (let j = 0; j < g.length; j++) result[i + j] = (result[i + j] as number) + (f[i] as number) * (g[j] as number);
+    const factor = f[i] as number;
+    if (factor === 0) continue;
+    for (let j = 0; j < g.length; j++) result[i + j] = (result[i + j] as number) + factor * (g[j] as number);
   }
-  return trim(result.map((c) => c % prime));
+  return trim(Array.from(result, (c) => c % prime));
 }
 
 /** Quotient and remainder by g ≠ 0. */
 export function divide(f: Residues, g: Residues, prime: number): { quotient: number[]; remainder: number[] } {
-  const rest = [...f];
+  // Products of residues below 2^15 stay within int32.
+  const rest = Int32Array.from(f);
+  const divisor = Int32Array.from(g);
   const quotient = new Array<number>(Math.max(0, f.length - g.length + 1)).fill(0);
   const lead = inverse(g.at(-1) as number, prime);
   for (let k = f.length - g.length; k >= 0; k--) {
     const factor = ((rest[k + g.length - 1] as number) * lead) % prime;
     quotient[k] = factor;
     if (factor === 0) continue;
-    for (let i = 0; i < g.length; i++) {
-      rest[k + i] = ((rest[k + i] as number) + (prime - factor) * (g[i] as number)) % prime;
+    const minus = prime - factor;
+    for (let i = 0; i < divisor.length; i++) {
+      rest[k + i] = ((rest[k + i] as number) + minus * (divisor[i] as number)) % prime;
     }
   }
-  return { quotient: trim(quotient), remainder: trim(rest.slice(0, Math.max(0, g.length - 1))) };
+  return { quotient: trim(quotient), remainder: trim(Array.from(rest.subarray(0, Math.min(f.length, g.length - 1)))) };
 }
 
 export function commonDivisor(f: Residues, g: Residues, prime: number): number[] {
@@ -80,18 +85,37 @@ export function powerModulo(base: Residues, exponent: bigint, f: Residues, prime
   return result;
 }
 
+/** The images x^(i·p) modulo f of 1, x, x², …: the p-th power of any h is then Σ hᵢ·x^(i·p), as (g + h)^p = g^p + h^p. */
+function frobeniusImages(f: Residues, prime: number): number[][] {
+  const step = powerModulo([0, 1], BigInt(prime), f, prime);
+  const images: number[][] = [[1]];
+  while (images.length < f.length - 1)
+    images.push(divide(multiply(images.at(-1) as number[], step, prime), f, prime).remainder);
+  return images;
+}
+
+function frobenius(h: Residues, images: readonly number[][], prime: number): number[] {
+  const result = new Float64Array(images.length);
+  h.forEach((factor, i) => {
+    if (factor === 0) return;
+    const image = images[i] as number[];
+    for (let k = 0; k < image.length; k++) result[k] = (result[k] as number) + factor * (image[k] as number);
+  });
+  return trim(Array.from(result, (c) => c % prime));
+}
+
 /** Products of all irreducible factors of equal degree, for square-free monic f. */
 export function distinctDegrees(f: Residues, prime: number): { degree: number; product: number[] }[] {
   const parts: { degree: number; product: number[] }[] = [];
+  const images = frobeniusImages(f, prime);
   let rest = [...f];
   let power: number[] = [0, 1];
   for (let d = 1; rest.length - 1 >= 2 * d; d++) {
-    power = powerModulo(power, BigInt(prime), rest, prime);
+    power = frobenius(power, images, prime);
     const product = commonDivisor(rest, subtract(power, [0, 1], prime), prime);
     if (product.length <= 1) continue;
     parts.push({ degree: d, product });
     rest = divide(rest, product, prime).quotient;
-    power = divide(power, rest, prime).remainder;
   }
   if (rest.length > 1) parts.push({ degree: rest.length - 1, product: rest });
   return parts;

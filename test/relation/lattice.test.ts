@@ -295,6 +295,30 @@ describe('a relation that only holds on the leading digits', () => {
   });
 });
 
+describe('several relations on leading digits, of numbers on several scales', () => {
+  it('never fails, and the basis stays a basis', () => {
+    const random = randomFrom('lattice hostile');
+    for (let round = 0; round < 40; round++) {
+      const n = random.integer(4, 18);
+      const bits = random.integer(100, 1200);
+      const scales = [0, random.integer(0, bits - 30), random.integer(0, bits - 30)];
+      const integers = Array.from({ length: n }, () => [
+        random.bits(bits) >> BigInt(scales[random.integer(0, 2)] as number),
+      ]);
+      const dependent = random.integer(0, 3);
+      for (let k = 1; k <= dependent && k < n - 1; k++) {
+        let sum = random.bits(random.integer(8, bits));
+        for (let i = 0; i < n - dependent; i++)
+          sum += (random.below(200n) - 100n) * ((integers[i] as bigint[])[0] as bigint);
+        integers[n - k] = [sum];
+      }
+      const result = finish({ integers, accept: () => round % 2 === 0 });
+      expect(result.kind, `round ${round}`).not.toBe('unstable');
+      expectUnimodular(result.basis(), n);
+    }
+  });
+});
+
 describe('degenerate input ends at once', () => {
   it('zero, equal and opposite numbers', () => {
     const random = randomFrom('lattice degenerate');

@@ -15,11 +15,13 @@ import type { ExactRow } from './state.ts';
 
 /** Clusters of pending numbers are split where neighbours in size differ by more than this many bits. */
 const CLUSTER_GAP = 16;
-export const PARK_GAP = 30;
+/** Lengths that spread over fewer bits than this are left together. */
+export const SPREAD = 28;
+const PARK_GAP = 8;
 /** Parked rows join again when the longest other row is within this many bits of them. */
-export const JOIN_GAP = 20;
-/** Each pass takes some 40 bits off the quotients; sizes differ by some 10^5 bits at most. */
-const MAX_PASSES = 10_000;
+export const JOIN_GAP = 3;
+/** Each pass takes some 40 bits off the quotients. Passes that do not shorten the row settle the last few; more would be noise. */
+const MAX_STALLED = 3;
 
 export const ROWS_PER_STEP = 16;
 
@@ -73,11 +75,14 @@ export function* arrange(rows: readonly ExactRow[], e: number): Generator<void, 
   for (const given of rows) {
     let row = given;
     if (done.rows.length % ROWS_PER_STEP === ROWS_PER_STEP - 1) yield;
-    for (let pass = 0; ; pass++) {
+    let shortest = Number.POSITIVE_INFINITY;
+    for (let stalled = 0; ; ) {
       const x = new Float64Array(n + m);
       const exponent = scaledRow(row, e, x);
       factor.project(x);
-      const quotients = pass < MAX_PASSES ? nearestQuotients(done, x, exponent) : [];
+      if (exponent < shortest) shortest = exponent;
+      else stalled++;
+      const quotients = stalled < MAX_STALLED ? nearestQuotients(done, x, exponent) : [];
       if (quotients.every((q) => q === 0n)) {
         factor.push(x, exponent);
         done.rows.push(row);
@@ -92,20 +97,28 @@ export function* arrange(rows: readonly ExactRow[], e: number): Generator<void, 
   return done;
 }
 
-/** First index from which every diagonal entry exceeds every earlier one by 2^PARK_GAP; the number of rows when there is none. */
+/**
+ * Where to part rows whose lengths spread too far for doubles: the index of the largest gap, every diagonal entry from there on
+ * exceeding every earlier one. The number of rows when there is no need, or no gap.
+ */
 export function parkFrom(diagonal: readonly number[]): number {
+  const n = diagonal.length;
+  if (Math.max(...diagonal) - Math.min(...diagonal) < SPREAD) return n;
   const least: number[] = [];
   let low = Number.POSITIVE_INFINITY;
-  for (let i = diagonal.length - 1; i >= 0; i--) {
+  for (let i = n - 1; i >= 0; i--) {
     low = Math.min(low, diagonal[i] as number);
     least[i] = low;
   }
   let top = diagonal[0] as number;
-  for (let i = 1; i < diagonal.length; i++) {
-    if ((least[i] as number) > top + PARK_GAP) return i;
+  let widest = PARK_GAP;
+  let at = n;
+  for (let i = 1; i < n; i++) {
+    const gap = (least[i] as number) - top;
+    if (gap > widest) [widest, at] = [gap, i];
     top = Math.max(top, diagonal[i] as number);
   }
-  return diagonal.length;
+  return at;
 }
 
 /** x ← the row [y·2^−e | b] as mantissas; returns their common exponent. */

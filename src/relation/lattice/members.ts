@@ -1,13 +1,16 @@
 /** Which rows take part at present: see groups.ts for those that wait. */
+import { bitLength } from '../../number/integer.ts';
 import { checksumOf } from './checksum.ts';
 import { profile } from './feed.ts';
-import { type Arranged, arrange, type Cluster, clusters, JOIN_GAP, PARK_GAP, type Parked, parkFrom } from './groups.ts';
+import { type Arranged, arrange, type Cluster, clusters, JOIN_GAP, type Parked, parkFrom, SPREAD } from './groups.ts';
 import { timesPowerOfTwo } from './limbs.ts';
 import { diagonalLog2, type Stages } from './stages.ts';
 import { type ExactRow, exactRow, type LatticeState, loadRows } from './state.ts';
 
 /** Pending numbers join this many bits before they are touched, so that several join together. */
 const ARRIVE_EARLY = 8;
+const BEARABLE_DROP = 24;
+const MAX_REBUILD_PASSES = 5000;
 
 export class Members {
   private readonly integers: readonly (readonly bigint[])[];
@@ -47,13 +50,30 @@ export class Members {
   *mind(): Generator<void, void, void> {
     const { stages } = this;
     const { state } = stages;
-    if (stages.shape.largest - stages.shape.least > PARK_GAP) yield* this.part();
+    if (stages.shape.largest - stages.shape.least >= SPREAD) yield* this.part();
     for (;;) {
       const last = this.parked.at(-1);
       if (last === undefined || stages.shape.largest + state.scale < last.least - JOIN_GAP) return;
       this.parked.pop();
       yield* this.regroup([], last.rows);
     }
+  }
+
+  /**
+   * What is left when doubles fail on the active rows: exact size reductions and exchanges of neighbours until the diagonal falls by
+   * less than doubles can bear. Slow, and rarely needed. False when it does not help.
+   */
+  *rebuild(): Generator<void, boolean, void> {
+    const { stages } = this;
+    let rows = this.activeRows();
+    for (let pass = 0; pass < MAX_REBUILD_PASSES; pass++) {
+      const arranged = yield* arrange(rows, stages.state.e);
+      rows = arranged.rows;
+      yield;
+      if (!exchangeNeighbours(rows, arranged.diagonal, pass & 1)) break;
+    }
+    yield* this.activate(rows);
+    return stages.shape.drop < BEARABLE_DROP + 1 && stages.restart();
   }
 
   /** log2 of the shortest that a row not active can be, beyond the span of the active ones. */
@@ -79,13 +99,14 @@ export class Members {
     const from = parkFrom(diagonal);
     if (from === state.active) return;
     const least = Math.min(...diagonal.slice(0, from)) + state.scale;
-    const bits = Math.max(...stages.residuals.subarray(0, from)) - least;
-    if (bits >= state.e - 1) {
-      yield* this.regroup([], []);
-      return;
-    }
     yield* stages.flushRows(state.e);
     const rows = this.activeRows();
+    const residual = Math.max(...rows.slice(0, from).flatMap((row) => row.y.map(bitLength)));
+    const bits = residual - Math.floor(least);
+    if (bits >= state.e - 1) {
+      yield* this.activate(rows);
+      return;
+    }
     pending.push({ rows: rows.slice(0, from), bits, least });
     pending.sort((p, q) => q.bits - p.bits);
     yield* this.activate(rows.slice(from));
@@ -121,6 +142,24 @@ export class Members {
     stages.shape = profile(state);
     stages.measureResiduals();
   }
+}
+
+/** Exchanges rows k − 1 and k wherever the second is clearly shorter, k of one parity; false when the diagonal falls little enough. */
+function exchangeNeighbours(rows: ExactRow[], diagonal: readonly number[], parity: number): boolean {
+  let top = Number.NEGATIVE_INFINITY;
+  let drop = 0;
+  for (const x of diagonal) {
+    top = Math.max(top, x);
+    drop = Math.max(drop, top - x);
+  }
+  if (drop < BEARABLE_DROP) return false;
+  for (let k = 1 + parity; k < rows.length; k += 2) {
+    // With |μ| ≤ ½ the product of the first k diagonal entries shrinks at every exchange, which bounds their number.
+    if ((diagonal[k] as number) < (diagonal[k - 1] as number) - 0.25) {
+      [rows[k - 1], rows[k]] = [rows[k] as ExactRow, rows[k - 1] as ExactRow];
+    }
+  }
+  return true;
 }
 
 function loadFactor(state: LatticeState, arranged: Arranged, count: number): void {

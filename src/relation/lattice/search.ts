@@ -94,7 +94,7 @@ export class LatticeSearch {
       const b = members.limit(stages.nextFeed(input.endBits));
       let look = stages.windowShort(b);
       if (!look) {
-        if (!(yield* stages.feedAndReduce(b))) return this.end('unstable');
+        if (!(yield* stages.feedAndReduce(b)) && !(yield* members.rebuild())) return this.end('unstable');
         look = this.gapShows() || this.floatBound() > input.maxNormLog2 + NORM_MARGIN;
         yield;
       }

@@ -13,6 +13,9 @@ import { DELTA, type SweepShape, sweep } from './sweep.ts';
 const RANGE = 35;
 const MOST_RANGE = 38;
 const LEAST_RANGE = 14;
+/** After a rebuild. */
+const RESTART_RANGE = 28;
+const MAX_RESTARTS = 30;
 /** The checksum may be off by this many bits before the factor is recomputed from the exact rows. */
 const CHECK_TOLERANCE = 0.3;
 /** Bits by which a refresh may move a diagonal entry before the stages become smaller, and below which they become larger. */
@@ -47,6 +50,7 @@ export class Stages {
   /** log2 of the largest residual of every active row, as last measured. */
   readonly residuals: Float64Array;
   private range = RANGE;
+  private restarts = 0;
 
   constructor(state: LatticeState) {
     this.state = state;
@@ -125,6 +129,12 @@ export class Stages {
     }
     if (!periodic) this.range = Math.max(LEAST_RANGE, this.range - 1);
     return yield* this.settle();
+  }
+
+  /** Begins again with smaller stages after the rows were rebuilt. False when their determinant is wrong, or it happened too often. */
+  restart(): boolean {
+    this.range = RESTART_RANGE;
+    return this.restarts++ < MAX_RESTARTS && this.checkError() <= CHECK_TOLERANCE;
   }
 
   /** The transform of this stage cannot be held exactly: back to the weight before it, and feed less. */

@@ -1,6 +1,6 @@
 /**
  * Times of nested sums, and their ratio to PARI/GP in the same run where `gp` is installed:
- * node .ci/run-ts.mjs test/bench/sums.ts [digits…]
+ * node .ci/run-ts.mjs test/bench/sums.ts [digits…] [part of a row's name…]
  */
 import { spawnSync } from 'node:child_process';
 import type { EvaluationContext } from '../../src/constants/family.ts';
@@ -109,9 +109,11 @@ const wanted = process.argv
   .slice(2)
   .map(Number)
   .filter((d) => d > 0);
+const parts = process.argv.slice(2).filter((argument) => !(Number(argument) > 0));
 for (const digits of wanted.length > 0 ? wanted : [100, 1000]) {
   console.log(`\n${`${digits} digits`.padEnd(52)}   ours ms   PARI/GP ms   ratio`);
   for (const { name, texts, pari } of rows) {
+    if (parts.length > 0 && !parts.some((part) => name.includes(part))) continue;
     const mine = ours(texts, Math.ceil(digits * Math.log2(10)));
     const theirs = pariTime(pari, digits);
     const ratio = theirs === null ? '' : (mine / theirs).toFixed(2);

@@ -215,6 +215,13 @@ describe('random numbers', () => {
     expect(result.floatNormBoundLog10).toBeGreaterThan(5);
     expect(result.fedBits).toBeLessThan(700);
     expectUnimodular(result.basis(), 25);
+    // With few digits the bound is only reached by the block reduction at the end, or not at all.
+    const few = Array.from({ length: 60 }, () => [random.bits(700)]);
+    const best = (690 * Math.log10(2)) / 60;
+    const kinds = [best - 0.75, best - 0.4, best + 0.2].map(
+      (maxNormLog10) => finish({ integers: few, maxNormLog10, accept: () => false }).kind,
+    );
+    expect(kinds).toEqual(['bounded', 'bounded', 'exhausted']);
   });
 });
 

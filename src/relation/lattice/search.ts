@@ -95,14 +95,14 @@ export class LatticeSearch {
       let look = stages.windowShort(b);
       if (!look) {
         if (!(yield* stages.feedAndReduce(b)) && !(yield* members.rebuild())) return this.end('unstable');
-        look = this.gapShows() || this.floatBound() > input.maxNormLog2 + NORM_MARGIN;
+        look = this.gapShows() || this.boundReached(NORM_MARGIN);
         yield;
       }
       if (look) {
         if (!(yield* stages.settle())) return this.end('unstable');
         const found = this.testExact();
         if (found !== undefined) return found;
-        if (this.floatBound() > input.maxNormLog2 + NORM_MARGIN / 2) return this.end('bounded');
+        if (this.boundReached(NORM_MARGIN / 2)) return this.end('bounded');
       }
       yield* members.mind();
       this.note();
@@ -140,6 +140,10 @@ export class LatticeSearch {
     return least - 2 * stages.checkError() - Math.log2(loss) / 2;
   }
 
+  private boundReached(margin: number): boolean {
+    return this.floatBound() > this.input.maxNormLog2 + margin;
+  }
+
   /** After the last bit: sweeps until nothing moves, then every row is tested. */
   private *finish(): Generator<void, SearchEnd, void> {
     const { stages } = this;
@@ -156,7 +160,9 @@ export class LatticeSearch {
     }
     if (!(yield* stages.settle())) return this.end('unstable');
     this.note();
-    return this.testExact() ?? (yield* this.strengthen());
+    const found = this.testExact();
+    if (found !== undefined) return found;
+    return this.boundReached(NORM_MARGIN / 2) ? this.end('bounded') : yield* this.strengthen();
   }
 
   /** Tours of block reduction until one changes nothing, a relation shows, or the nodes allowed are spent. */
@@ -173,10 +179,11 @@ export class LatticeSearch {
       yield;
       const slope = stages.shape.first - stages.shape.least;
       if (slope < best - FLATTER) [best, idle] = [slope, -1];
-      if (stages.shape.first > first - SHORTER) continue;
+      if (stages.shape.first > first - SHORTER && !this.boundReached(NORM_MARGIN)) continue;
       if (!(yield* stages.settle())) return this.end('unstable');
       const found = this.testExact();
       if (found !== undefined) return found;
+      if (this.boundReached(NORM_MARGIN / 2)) return this.end('bounded');
     }
     return (yield* stages.settle()) ? (this.testExact() ?? this.end('exhausted')) : this.end('unstable');
   }

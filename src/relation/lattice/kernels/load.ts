@@ -23,8 +23,13 @@ export function newKernels(choice: KernelChoice): Kernels {
 function compile(): WebAssembly.Module | null {
   if (typeof WebAssembly === 'undefined') return null;
   const bytes = Uint8Array.from(atob(KERNELS_BASE64), (character) => character.charCodeAt(0));
-  // `validate` is false where the engine knows no SIMD.
-  return WebAssembly.validate(bytes) ? new WebAssembly.Module(bytes) : null;
+  // `validate` is false where the engine knows no SIMD; compiling is refused under a content security policy without 'wasm-unsafe-eval'.
+  if (!WebAssembly.validate(bytes)) return null;
+  try {
+    return new WebAssembly.Module(bytes);
+  } catch {
+    return null;
+  }
 }
 
 function webAssemblyKernels(module: WebAssembly.Module): Kernels {

@@ -3,8 +3,12 @@ import { InputError } from '../../src/number/errors.ts';
 import type { SearchRequest } from '../../src/search/request.ts';
 import type { EngineClient } from '../../src/worker/client.ts';
 import { AbortError } from '../../src/worker/errors.ts';
+import { searchInParallel } from '../../src/worker/parallel.ts';
 import type { ValueEntry } from './project.ts';
 import type { BenchStore } from './store.ts';
+
+/** Workers that a search may use. */
+export const SEARCH_WORKERS = 2;
 
 /** The request that a value's sheet stands for. */
 export function requestOf(value: ValueEntry): SearchRequest {
@@ -24,7 +28,7 @@ export async function startSearch(store: BenchStore, engine: EngineClient, value
   const actions = store.getState();
   actions.searchStarted(id, controller);
   try {
-    const record = await engine.call('search', requestOf(value), {
+    const record = await searchInParallel(engine, SEARCH_WORKERS, requestOf(value), {
       signal: controller.signal,
       onProgress: (progress) => actions.searchMoved(id, progress),
     });

@@ -3,8 +3,8 @@
  * `sqrt`, `re`, `im`, `abs`, `conj`. Every other symbol or call is an atom, and the caller knows its value.
  */
 import { type Ball, fromInteger, fromRational, negate as negateReal, timesPowerOfTwo } from '../number/ball.ts';
-import { add, divide, isComplex, multiply, toComplex, type Value } from '../number/complex.ts';
-import { absoluteValue, I, integerPower, knownSign, power, root, sizeOf } from '../number/complex-elementary.ts';
+import { add, divide, isComplex, multiply, type Value } from '../number/complex.ts';
+import { absoluteValue, I, integerPower, power, root, sizeOf } from '../number/complex-elementary.ts';
 import { sinCos } from '../number/elementary.ts';
 import { InputError } from '../number/errors.ts';
 import { piBall } from '../number/reduction.ts';
@@ -132,14 +132,4 @@ export function isRealStructure(term: Term, atom: (atom: Atom) => boolean, sampl
       if (term.name === 'sqrt') return notNegative(operand(term));
       return term.name === 'conj' ? inner(operand(term)) : true;
   }
-}
-
-/** The real part of a value known to be real. */
-export function realPart(x: Value): Ball {
-  return toComplex(x).re;
-}
-
-/** Whether a real value lies below zero; PrecisionError when that cannot be told. */
-export function isNegative(x: Ball): boolean {
-  return knownSign(x) < 0;
 }

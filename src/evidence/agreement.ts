@@ -1,5 +1,5 @@
 /** How far an expression and a value agree. */
-import { type Ball, magnitude, subtract } from '../number/ball.ts';
+import { type Ball, subtract } from '../number/ball.ts';
 import { absolute, log10Of } from '../number/integer.ts';
 
 const LOG10_2 = Math.log10(2);
@@ -33,9 +33,4 @@ export function midpointAgreement(value: Ball, expression: Ball, scaleLog10 = si
 export function vouchedDigits(value: Ball, scaleLog10 = sizeLog10(value)): number {
   if (value.rad === 0n) return Number.POSITIVE_INFINITY;
   return Math.max(0, scaleLog10 - (log10Of(value.rad) - value.bits * LOG10_2));
-}
-
-/** Bits above the point that a ball needs; 0 for sizes below one. */
-export function integerBits(x: Ball): number {
-  return Math.max(0, magnitude(x));
 }

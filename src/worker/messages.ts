@@ -4,14 +4,6 @@ import type { SearchProgress, SearchRecord } from '../search/record.ts';
 import type { BasisSpec, SearchRequest } from '../search/request.ts';
 import type { Rewritten } from '../search/rewrite.ts';
 
-export interface ParsedValue {
-  /** Canonical decimal text, or the two parts of a complex number. */
-  readonly canonical: string;
-  readonly significantDigits: number;
-  readonly trustedDigits: number;
-  readonly notes: readonly string[];
-}
-
 export interface BasisElementView {
   readonly text: string;
   readonly latex: string;

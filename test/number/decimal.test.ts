@@ -1,3 +1,4 @@
+import { Decimal as Reference } from 'decimal.js';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { contains } from '../../src/number/ball.ts';
@@ -191,5 +192,25 @@ describe('balls of decimals and back', () => {
     expect(formatBall({ mid: 99999n, rad: 0n, bits: 0 }, 2)).toBe('100000');
     expect(formatBall({ mid: -1n, rad: 0n, bits: 40 }, 5)).toBe('-9.0949e-13');
     expect(digitsKnown({ mid: 10n ** 30n, rad: 1n, bits: 0 })).toBe(30);
+  });
+
+  it('agrees with decimal.js 10.6 on reading and on rounding half up to significant digits', () => {
+    const Wide = Reference.clone({ precision: 400, rounding: Reference.ROUND_HALF_UP, toExpNeg: -1e6, toExpPos: 1e6 });
+    fc.assert(
+      fc.property(
+        fc.bigInt(1n, 10n ** 80n),
+        fc.integer({ min: -90, max: 10 }),
+        fc.integer({ min: 1, max: 60 }),
+        (c, e, digits) => {
+          const decimal = parseDecimal(`${c}e${e}`);
+          expect(new Wide(canonicalText(decimal)).eq(new Wide(`${c}e${e}`))).toBe(true);
+          // 2^k scaling keeps the binary ball exact, so that the two programs round the same number.
+          const ball = { mid: c, rad: 0n, bits: 64 };
+          const exact = new Wide(c.toString()).div(new Wide(2).pow(64));
+          expect(new Wide(formatBall(ball, digits)).eq(exact.toSignificantDigits(digits))).toBe(true);
+        },
+      ),
+      { numRuns: 2000, seed },
+    );
   });
 });

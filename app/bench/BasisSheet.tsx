@@ -98,10 +98,7 @@ function Picks({ basis, onPick }: PickProps) {
             aria-pressed={on}
             onClick={() => onPick(on ? basis.filter((t) => t !== text) : [...basis, text])}
           >
-            <span aria-hidden="true">
-              <Formula latex={latex} text={text} />
-            </span>
-            <span className="visually-hidden">{text}</span>
+            <Formula latex={latex} text={text} />
           </button>
         );
       })}

@@ -5,6 +5,7 @@ import { Power } from '../parts/Power.tsx';
 import { Sheet } from '../parts/Sheet.tsx';
 import type { ValueEntry } from '../state/project.ts';
 import { useBench } from '../state/react.ts';
+import type { Running } from '../state/store.ts';
 import type { Reading } from './reading.ts';
 
 const STAGES: readonly { readonly key: SearchProgress['stage']; readonly word: string }[] = [
@@ -48,7 +49,7 @@ export function SearchSheet({
         </div>
       ) : (
         <Progress
-          progress={running.progress}
+          running={running}
           trusted={reading.kind === 'value' ? reading.trusted : 0}
           onCancel={() => running.controller.abort()}
         />
@@ -76,17 +77,17 @@ function missingWord(reading: Reading, constants: number): string | null {
 }
 
 function Progress({
-  progress,
+  running: { progress, pass },
   trusted,
   onCancel,
 }: {
-  progress: SearchProgress | null;
+  running: Running;
   trusted: number;
   onCancel: () => void;
 }) {
   const at = STAGES.findIndex((s) => s.key === progress?.stage);
   const fraction = progress?.fraction ?? 0;
-  const offered = digitsUsed(trusted);
+  const offered = pass === 1 ? digitsUsed(trusted) : trusted;
   return (
     <div className="progress">
       <div className="row middle">
@@ -103,7 +104,7 @@ function Progress({
         </button>
       </div>
       <dl className="facts">
-        <Fact name="Digits consumed">
+        <Fact name={pass === 1 ? 'Digits consumed' : 'Digits consumed, again with all'}>
           {at < 1 ? '0' : at === 1 ? Math.round(fraction * offered) : offered} of {offered}
         </Fact>
         <Fact name="Any relation is longer than">

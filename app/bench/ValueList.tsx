@@ -4,12 +4,10 @@ import type { SearchRecord } from '../../src/search/record.ts';
 import { type MarkKey, markOf, VerdictMark } from '../parts/VerdictMark.tsx';
 import { currentRecord, labelOf, type ValueEntry } from '../state/project.ts';
 import { useBench, useBenchStore, useProject } from '../state/react.ts';
-import type { BenchState } from '../state/store.ts';
 import { addAndFocus } from './keys.ts';
 
 export function ValueList() {
   const project = useProject();
-  const running = useBench((s) => s.running);
   const store = useBenchStore();
   const { select, remove } = store.getState();
   const { selected } = project;
@@ -36,7 +34,7 @@ export function ValueList() {
                 <span className="value-digits" aria-hidden="true">
                   {glimpse(value.text)}
                 </span>
-                <State value={value} running={running[value.id]} />
+                <State value={value} />
               </button>
               <button
                 type="button"
@@ -61,8 +59,9 @@ export function ValueList() {
   );
 }
 
-function State({ value, running }: { value: ValueEntry; running: BenchState['running'][string] | undefined }) {
-  if (running !== undefined) return <VerdictMark mark="running" />;
+function State({ value }: { value: ValueEntry }) {
+  const running = useBench((s) => s.running[value.id] !== undefined);
+  if (running) return <VerdictMark mark="running" />;
   const record = currentRecord(value);
   const mark: MarkKey = record === null && value.records.length > 0 ? 'stale' : markOf(record);
   return <VerdictMark mark={mark} detail={detailOf(record)} />;

@@ -68,6 +68,12 @@ function DigitsField({ value, reading, noteId }: { value: ValueEntry; reading: R
         placeholder={'Paste a number here.\nGrouping, line breaks, exponents and 0.12345(67) are understood.'}
         aria-invalid={reading.kind === 'wrong' && reading.field === 'digits'}
         aria-describedby={noteId}
+        onPaste={(e) => {
+          // Refused before the browser lays out megabytes of text.
+          const tooLong = e.clipboardData.getData('text/plain').length > LONGEST_TEXT;
+          setRefused(tooLong);
+          if (tooLong) e.preventDefault();
+        }}
         onChange={(e) => {
           const tooLong = e.target.value.length > LONGEST_TEXT;
           setRefused(tooLong);

@@ -1,4 +1,4 @@
-/** A typeset formula. KaTeX is loaded when the first one is shown; until then, and if it fails, the typed text stands there. */
+/** A typeset formula; a short one is read out as its typed text, a displayed one as MathML. KaTeX is loaded when the first one is shown; until then, and if it fails, the typed text stands there. */
 import { useEffect, useState } from 'react';
 import { typeset, typesetBefore } from './typeset.ts';
 
@@ -14,6 +14,11 @@ export function Formula({ latex, text, display = false }: { latex: string; text:
     };
   }, [latex, display, html]);
   if (html === undefined || html === null) return <code className="formula-text">{text}</code>;
-  // biome-ignore lint/security/noDangerouslySetInnerHtml: KaTeX output, made with trust off
-  return <span className={display ? 'formula display' : 'formula'} dangerouslySetInnerHTML={{ __html: html }} />;
+  return (
+    <span className={display ? 'formula display' : 'formula'}>
+      {/* biome-ignore lint/security/noDangerouslySetInnerHtml: KaTeX output, made with trust off */}
+      <span dangerouslySetInnerHTML={{ __html: html }} />
+      {!display && <span className="visually-hidden">{text}</span>}
+    </span>
+  );
 }

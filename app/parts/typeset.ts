@@ -56,7 +56,14 @@ async function work(): Promise<void> {
 
 function render(setter: Katex, { latex, display }: Job): string | null {
   try {
-    return setter.renderToString(latex, { displayMode: display, throwOnError: true, trust: false, strict: 'ignore' });
+    const output = display ? 'htmlAndMathml' : 'html';
+    return setter.renderToString(latex, {
+      displayMode: display,
+      output,
+      throwOnError: true,
+      trust: false,
+      strict: 'ignore',
+    });
   } catch {
     return null;
   }

@@ -21,6 +21,8 @@ export type SaveState =
 
 export interface Running {
   readonly progress: SearchProgress | null;
+  /** 1 while part of the digits is held out; 2 when all are used, after the first pass found nothing. */
+  readonly pass: 1 | 2;
   readonly controller: AbortController;
 }
 
@@ -107,14 +109,18 @@ export function createBenchStore(project: Project): BenchStore {
       redo: () => set(({ history }) => ({ history: redo(history), announcement: 'Redone.' })),
       searchStarted: (id, controller) =>
         set(({ running, problems }) => ({
-          running: { ...running, [id]: { progress: null, controller } },
+          running: { ...running, [id]: { progress: null, pass: 1, controller } },
           problems: without(problems, id),
           announcement: 'Search started.',
         })),
       searchMoved: (id, progress) =>
         set(({ running }) => {
           const current = running[id];
-          return current === undefined ? {} : { running: { ...running, [id]: { ...current, progress } } };
+          if (current === undefined) return {};
+          const before = current.progress;
+          const again =
+            before?.stage === 'relation' && progress.stage === 'relation' && progress.fraction < before.fraction;
+          return { running: { ...running, [id]: { ...current, progress, pass: again ? 2 : current.pass } } };
         }),
       searchEnded: (id, result) =>
         set(({ history, running, problems }) => {

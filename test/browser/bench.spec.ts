@@ -1,5 +1,6 @@
 /** The whole path as a user walks it, with the built app, the real worker and the real IndexedDB. */
 import { expect, test } from '@playwright/test';
+import { mainThreadTasks } from './tasks.ts';
 import { digits, freshValue, problem, readySpace, saved, search, typed, useBasis, verdict } from './walk.ts';
 
 test('a newcomer gets a result in one click, without scrolling', async ({ page }) => {
@@ -91,11 +92,11 @@ test('bad input: one sentence each, and nothing is lost', async ({ page }) => {
     await expect(note).toHaveText(said);
     await expect(search(page)).toBeDisabled();
   }
-  await digits(page).evaluate((element, text) => {
-    const setter = Object.getOwnPropertyDescriptor(HTMLTextAreaElement.prototype, 'value')?.set;
-    setter?.call(element, text);
-    element.dispatchEvent(new Event('input', { bubbles: true }));
-  }, '7'.repeat(10_000_000));
+  await digits(page).evaluate((element) => {
+    const clipboardData = new DataTransfer();
+    clipboardData.setData('text/plain', '7'.repeat(10_000_000));
+    element.dispatchEvent(new ClipboardEvent('paste', { clipboardData, bubbles: true, cancelable: true }));
+  });
   await expect(page.getByText(/longer than 200,000 digits/)).toBeVisible();
   await expect(digits(page)).toHaveValue('1.2');
   await digits(page).fill('');
@@ -110,7 +111,7 @@ test('bad input: one sentence each, and nothing is lost', async ({ page }) => {
   await expect(page.getByText(/“zetta”.*column 1/)).toBeVisible();
   await expect(constant).toHaveValue('zetta(3)');
   await page.getByLabel('Divide by').fill('sqrt(');
-  await expect(page.getByText(/column 6|column 5|never closed/)).toBeVisible();
+  await expect(page.getByText(/The end of the expression stands where/)).toBeVisible();
 });
 
 test('few digits for the basis: warned before, no relation after', async ({ page }) => {
@@ -121,25 +122,19 @@ test('few digits for the basis: warned before, no relation after', async ({ page
   await expect(verdict(page)).toContainText(/Inconclusive|Excluded/);
 });
 
-test('a long search shows progress, can be cancelled, and never blocks the page', async ({ page }) => {
+test('a long search shows progress, can be cancelled, and never blocks the page', async ({ page, browser }) => {
   const text = Array.from({ length: 1500 }, (_, k) => (k * k * 7 + ((k * 31) % 17) + (k ** 3 % 13)) % 10).join('');
   await freshValue(page, `0.${text}`);
   await page.getByText('Other spaces').click();
   await page.getByLabel('Space', { exact: true }).selectOption('alternating');
-  await page.getByLabel('Weight').selectOption('6');
+  await page.getByLabel('Weight', { exact: true }).selectOption('6');
   await page.getByLabel('and all lower weights').check();
   await page.getByRole('button', { name: 'Use these' }).click();
   await expect(page.locator('.chip .katex')).toHaveCount(33);
-  await page.evaluate(() => {
-    const seen: number[] = [];
-    Object.assign(globalThis, { longTasks: seen });
-    new PerformanceObserver((list) => seen.push(...list.getEntries().map((e) => e.duration))).observe({
-      type: 'longtask',
-    });
-  });
+  await browser.startTracing(page, { categories: ['toplevel', 'disabled-by-default-toplevel', '__metadata'] });
   await search(page).click();
   await expect(page.getByText('Digits consumed')).toBeVisible();
-  await expect(page.locator('.facts dd').first()).toHaveText(/^[1-9]\d* of 1275$/, { timeout: 40_000 });
+  await expect(page.locator('.facts dd').first()).toHaveText(/^[1-9]\d* of 1274$/, { timeout: 40_000 });
   await expect(page.locator('.facts .power')).toBeVisible({ timeout: 20_000 });
   await page.waitForTimeout(1000);
   const started = Date.now();
@@ -147,11 +142,11 @@ test('a long search shows progress, can be cancelled, and never blocks the page'
   await expect(search(page)).toBeVisible();
   expect(Date.now() - started).toBeLessThan(1500);
   await expect(page.getByRole('status')).toHaveText('Search cancelled.');
-  const longTasks = await page.evaluate(() => (globalThis as unknown as { longTasks: number[] }).longTasks);
-  test
-    .info()
-    .annotations.push({ type: 'long tasks (ms)', description: longTasks.map(Math.round).join(', ') || 'none' });
-  expect(longTasks.filter((ms) => ms > 50)).toEqual([]);
+  const tasks = mainThreadTasks(await browser.stopTracing());
+  const longest = Math.max(...tasks);
+  test.info().annotations.push({ type: 'longest task', description: `${longest.toFixed(1)} ms of ${tasks.length}` });
+  expect(tasks.length).toBeGreaterThan(20);
+  expect(longest).toBeLessThan(50);
 });
 
 test('ten thousand digits: only the lines in sight are drawn, and the end is reached', async ({ page }) => {

@@ -25,6 +25,8 @@ export interface Case {
   /** Whether the other method found the same relation; null when it was not asked. */
   readonly secondMethod: { readonly method: string; readonly same: boolean } | null;
   readonly searchesLog10: number;
+  /** Items about the basis, worked out by whoever can search in it. */
+  readonly basisItems?: readonly EvidenceItem[];
 }
 
 export interface Assessment {
@@ -85,6 +87,7 @@ export function assess(found: Case): Assessment {
       ...(found.secondMethod === null ? [] : [methodItem(found.secondMethod)]),
       coefficientItem(found.integers),
       weightItem(found),
+      ...(found.basisItems ?? []),
     ],
     rule: { key: rule.key, text: rule.text, wouldChange: rule.wouldChange },
   };

@@ -39,4 +39,6 @@ export interface SearchRequest {
   /** Upper limit of the Euclidean norm of the integer relation, as decimal text such as "1e12". */
   readonly maxNorm?: string;
   readonly label?: string;
+  /** How many searches of a plan this one is of (default 1): the logarithm is taken off the surplus, since chance had as many tries. */
+  readonly amongSearches?: number;
 }

@@ -9,10 +9,7 @@ import { type Problem, prepareProblem, type SearchOptions } from './problem.ts';
 import type { SearchRecord } from './record.ts';
 import { type Report, relate } from './relate.ts';
 import type { SearchRequest } from './request.ts';
-
-/** Shares of the trusted digits with which a search that found nothing is repeated, in case the last digits are wrong. */
-const RESCUE_SHARES = [0.6, 0.4, 0.25];
-const FEWEST_RESCUE_DIGITS = 20;
+import { rescue } from './rescue.ts';
 
 /**
  * Runs one search. Rejects with InputError for a request that cannot be carried out (one plain sentence), and with the
@@ -32,7 +29,7 @@ export async function runSearch(request: SearchRequest, options: SearchOptions =
   timings.relationMs = judging - searching;
   report('evidence', 0);
   const record =
-    (outcome.kind === 'excluded' ? await rescue(problem, options) : undefined) ??
+    (outcome.kind === 'relation' ? undefined : await rescue(problem, options)) ??
     (await judge(problem, outcome, digits, options));
   timings.evidenceMs = performance.now() - judging;
   report('evidence', 1);
@@ -62,19 +59,6 @@ async function search(
   const outcome = await relate(problem, used, problem.method, options, report);
   if (outcome.kind === 'relation' || used >= trusted) return { outcome, digits: used };
   return { outcome: await relate(problem, trusted, problem.method, options, report), digits: trusted };
-}
-
-/** A relation that holds on fewer digits and is contradicted by the last ones: the record of a wrong tail, or undefined. */
-async function rescue(problem: Problem, options: SearchOptions): Promise<SearchRecord | undefined> {
-  for (const share of RESCUE_SHARES) {
-    const digits = Math.floor(problem.value.trusted * share);
-    if (digits < FEWEST_RESCUE_DIGITS) return undefined;
-    const outcome = await relate(problem, digits, problem.method, options, null);
-    if (outcome.kind !== 'relation' || outcome.coefficients[0] === 0n) continue;
-    const record = await judge(problem, outcome, digits, options);
-    if (record.verdict === 'holds') return record;
-  }
-  return undefined;
 }
 
 function reporter(options: SearchOptions, start: number): Report {

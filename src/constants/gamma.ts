@@ -23,7 +23,7 @@ import { agm, exp, log, root, sinCos } from '../number/elementary.ts';
 import { InputError } from '../number/errors.ts';
 import { bitLength } from '../number/integer.ts';
 import { piBall } from '../number/reduction.ts';
-import { splitSeries } from '../number/splitting.ts';
+import { scaledQuotient, splitPositive } from '../number/splitting.ts';
 import { toAccuracy } from './accurate.ts';
 import { type Fraction, factorial, fraction } from './exact.ts';
 import type { Family } from './family.ts';
@@ -77,12 +77,14 @@ function reflected(value: Ball, s: Fraction, work: number): Ball {
 function gammaSplit(p: bigint, q: bigint, work: number): Ball {
   const n = Math.max(64, Math.ceil(work * Math.LN2) + 1);
   const N = BigInt(n);
-  const { Q, T } = splitSeries({ p: () => N * q, q: (k) => p + q * BigInt(k), a: () => 1n }, 1, 3 * n);
-  // Σ = (q/p)(1 + T/Q), as large as e^N; N^s e^−N restores the size.
+  // Σ = (q/p)(1 + T/Q), as large as e^N, which N^s e^−N takes back: as many bits beyond the point as before it.
   const size = Math.ceil(n * Math.LOG2E) + bitLength(N) + bitLength(q);
-  const shift = BigInt(work + 16);
-  const top = (Q + T) * q;
-  const sum: Ball = { mid: (top << shift) / (Q * p), rad: 1n, bits: work + 16 };
+  const factors = { p: () => N * q, q: (k: number) => p + q * BigInt(k), a: () => 1n };
+  const { Q, T } = splitPositive(factors, 1, 3 * n, work + 16);
+  // T/Q has a relative error below 2^−(work + 18), in units of 2^−(work + 16) less than a quarter of itself, and the floor.
+  const ratio: Ball = { mid: scaledQuotient(T, Q, work + 16), rad: 0n, bits: work + 16 };
+  const loose = widen(ratio, (ratio.mid >> BigInt(work + 17)) + 2n);
+  const sum = divide(timesInteger(add(loose, fromInteger(1n)), q), fromInteger(p), work + 16);
   const inner = work + 16 + 2 * size;
   const power = divide(timesInteger(log(fromInteger(N), inner), p), fromInteger(q), inner);
   const factor = exp(subtract(power, fromInteger(N)), work + 16 + size);

@@ -3,14 +3,15 @@
  *
  * Radii. Where the parity of s is that of the character: an exact rational times a power of π (ball arithmetic). Catalan and
  * ζ(3): binary splitting of series whose terms fall by factors of at least 182 and 1000, so that what is left out is less than
- * 1.01 times the first term left out, made less than one unit of 2^−work; the quotient is floored: 2 units. Everything else: the
+ * 1.01 times the first term left out, made less than one unit of 2^−work; the quotient is floored: 2 units, and one more for the rounding
+ * inside the splitting of Catalan's. Everything else: the
  * alternating sums of alternating.ts (2 units each), with exact integer combinations.
  */
 import { type Ball, divide, fromInteger, multiply, power, sqrt, subtract, timesInteger } from '../number/ball.ts';
 import { log, sinCos } from '../number/elementary.ts';
 import { InputError } from '../number/errors.ts';
 import { piBall } from '../number/reduction.ts';
-import { splitSeries } from '../number/splitting.ts';
+import { scaledQuotient, splitPositive, splitSeries } from '../number/splitting.ts';
 import { toAccuracy } from './accurate.ts';
 import { ALTERNATING_ERROR, alternatingSums } from './alternating.ts';
 import {
@@ -168,7 +169,7 @@ export const zetaFamily: Family<ZetaArgs> = {
 /** G = (1/64) Σ_{k≥1} 256^k (580k² − 184k + 15)/(k³(2k−1) C(6k,3k) C(6k,4k) C(4k,2k)): Pilehrood and Pilehrood, Discrete Math. Theor. Comput. Sci. 12 (2010) 223. */
 function catalan(work: number): Ball {
   const count = Math.ceil((work + 16 + 2 * Math.log2(work + 2)) / 7.509) + 2;
-  const { Q, T } = splitSeries(
+  const { Q, T } = splitPositive(
     {
       p: (k) => (k === 1 ? 32n : 32n * BigInt(k - 1) ** 3n * BigInt(2 * k - 3)),
       q: (k) => 9n * (BigInt(6 * k - 1) * BigInt(6 * k - 5)) ** 2n,
@@ -176,8 +177,9 @@ function catalan(work: number): Ball {
     },
     1,
     count,
+    work,
   );
-  return { mid: (T << BigInt(work)) / (64n * Q), rad: 2n, bits: work };
+  return { mid: scaledQuotient(T, Q, work) >> 6n, rad: 3n, bits: work };
 }
 
 const catalanFamily = singleConstant({

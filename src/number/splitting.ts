@@ -1,4 +1,5 @@
 /** Binary splitting of hypergeometric series: Haible and Papanikolaou, "Fast multiprecision evaluation of series of rational numbers", ANTS-III (1998). */
+import { bitLength } from './integer.ts';
 
 /** Σ a(n) Π_{k=from…n} p(k)/q(k) over from ≤ n < to equals T/Q; P and Q are the products of all p and q. */
 export interface Split {
@@ -47,4 +48,67 @@ export function splitProduct(f: (n: number) => bigint, from: number, to: number)
   }
   const middle = (from + to) >> 1;
   return splitProduct(f, from, middle) * splitProduct(f, middle, to);
+}
+
+/** mantissa·2^exponent. */
+export interface Scaled {
+  readonly mantissa: bigint;
+  readonly exponent: number;
+}
+
+export interface ScaledSplit {
+  readonly P: Scaled;
+  readonly Q: Scaled;
+  readonly T: Scaled;
+}
+
+/** Ranges of at most this many terms are kept exactly. */
+const EXACT = 32;
+/** Bits kept beyond those asked for; see `splitPositive`. */
+const GUARD = 28;
+
+/**
+ * As `splitSeries` for positive p, q, a, with numbers longer than `bits` + 28 bits rounded down: where p and q have much in common
+ * the exact ones grow to many times the precision wanted.
+ *
+ * Each of P, Q, T and the quotient T/Q has a relative error below 2^−(bits + 2): a rounding loses less than 2^−(bits + 27)
+ * relative, sums of positive numbers do not increase a relative error and products add them, so that the error of a range is
+ * at most that of its halves and one rounding each: less than 2^20 of them for fewer than 2^24 terms, twice that for a quotient.
+ */
+export function splitPositive(terms: SeriesTerms, from: number, to: number, bits: number): ScaledSplit {
+  if (to - from <= EXACT) {
+    const { P, Q, T } = splitSeries(terms, from, to);
+    return { P: { mantissa: P, exponent: 0 }, Q: { mantissa: Q, exponent: 0 }, T: { mantissa: T, exponent: 0 } };
+  }
+  const middle = (from + to) >> 1;
+  const left = splitPositive(terms, from, middle, bits);
+  const right = splitPositive(terms, middle, to, bits);
+  const trimmed = (x: Scaled): Scaled => trim(x, bits + GUARD);
+  return {
+    P: trimmed(times(left.P, right.P)),
+    Q: trimmed(times(left.Q, right.Q)),
+    T: trimmed(plus(times(left.T, right.Q), times(left.P, right.T))),
+  };
+}
+
+function times(x: Scaled, y: Scaled): Scaled {
+  return { mantissa: x.mantissa * y.mantissa, exponent: x.exponent + y.exponent };
+}
+
+/** Exact sum. */
+function plus(x: Scaled, y: Scaled): Scaled {
+  const exponent = Math.min(x.exponent, y.exponent);
+  const up = (z: Scaled): bigint => z.mantissa << BigInt(z.exponent - exponent);
+  return { mantissa: up(x) + up(y), exponent };
+}
+
+function trim(x: Scaled, bits: number): Scaled {
+  const drop = bitLength(x.mantissa) - bits;
+  return drop <= 0 ? x : { mantissa: x.mantissa >> BigInt(drop), exponent: x.exponent + drop };
+}
+
+/** x/y with `bits` fraction bits, rounded down; positive x and y. */
+export function scaledQuotient(x: Scaled, y: Scaled, bits: number): bigint {
+  const shift = bits + x.exponent - y.exponent;
+  return shift >= 0 ? (x.mantissa << BigInt(shift)) / y.mantissa : x.mantissa / (y.mantissa << BigInt(-shift));
 }

@@ -208,11 +208,18 @@ export function root(x: Ball, n: number, bits: number): Ball {
     const shift = n * bits - x.bits;
     return shift >= 0 ? value << BigInt(shift) : value >> BigInt(-shift);
   };
-  const low = integerRoot(scaled(x.mid - x.rad), n);
-  if (x.rad === 0n) return { mid: low, rad: 1n, bits };
-  const high = integerRoot(scaled(x.mid + x.rad), n) + 1n;
-  const mid = (low + high) >> 1n;
-  return { mid, rad: high - mid, bits };
+  if (x.mid === x.rad) return touchingZero(scaled(x.mid + x.rad), n, bits);
+  const mid = integerRoot(scaled(x.mid), n);
+  if (x.rad === 0n) return { mid, rad: 1n, bits };
+  // x^(1/n) varies by at most r·x^(1/n)/(n(x − r)) over the ball.
+  const below = BigInt(n) * (x.mid - x.rad);
+  return { mid, rad: 2n + (x.rad * (mid + 1n)) / below, bits };
+}
+
+/** The roots of [0, top]. */
+function touchingZero(top: bigint, n: number, bits: number): Ball {
+  const half = (integerRoot(top, n) >> 1n) + 1n;
+  return { mid: half, rad: half, bits };
 }
 
 /** ⌊value^(1/n)⌋ for value ≥ 0 and n ≥ 1. */

@@ -1,6 +1,8 @@
 import { defineConfig } from '@playwright/test';
 
-const port = 4178;
+/** A port of this run's own, handed on to the test processes, so that two checkouts can be tested side by side. */
+process.env.DIGIT_ASSAY_TEST_PORT ??= `${20_000 + (process.pid % 20_000)}`;
+const port = Number(process.env.DIGIT_ASSAY_TEST_PORT);
 
 export default defineConfig({
   testDir: '.',

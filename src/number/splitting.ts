@@ -2,7 +2,7 @@
 import { bitLength } from './integer.ts';
 
 /** Σ a(n) Π_{k=from…n} p(k)/q(k) over from ≤ n < to equals T/Q; P and Q are the products of all p and q. */
-export interface Split {
+interface Split {
   readonly P: bigint;
   readonly Q: bigint;
   readonly T: bigint;
@@ -17,13 +17,18 @@ export interface SeriesTerms {
 /** Below this many terms a plain loop beats the recursion in V8. */
 const BLOCK = 6;
 
-/** The exact sum of the terms from ≤ n < to. `to` > `from`. */
-export function splitSeries(terms: SeriesTerms, from: number, to: number): Split {
+/** The exact sum of the terms from ≤ n < to, as T/Q. `to` > `from`. */
+export function splitSeries(terms: SeriesTerms, from: number, to: number): { readonly Q: bigint; readonly T: bigint } {
+  return split(terms, from, to, false);
+}
+
+/** P is needed of ranges that others follow; where `withP` is false it is left at 0. */
+function split(terms: SeriesTerms, from: number, to: number, withP: boolean): Split {
   if (to - from <= BLOCK) return block(terms, from, to);
   const middle = (from + to) >> 1;
-  const left = splitSeries(terms, from, middle);
-  const right = splitSeries(terms, middle, to);
-  return { P: left.P * right.P, Q: left.Q * right.Q, T: left.T * right.Q + left.P * right.T };
+  const left = split(terms, from, middle, true);
+  const right = split(terms, middle, to, withP);
+  return { P: withP ? left.P * right.P : 0n, Q: left.Q * right.Q, T: left.T * right.Q + left.P * right.T };
 }
 
 function block(terms: SeriesTerms, from: number, to: number): Split {
@@ -39,24 +44,13 @@ function block(terms: SeriesTerms, from: number, to: number): Split {
   return { P, Q, T };
 }
 
-/** Π f(n) over from ≤ n < to by halving; 1 for an empty range. */
-export function splitProduct(f: (n: number) => bigint, from: number, to: number): bigint {
-  if (to - from <= 8) {
-    let product = 1n;
-    for (let n = from; n < to; n++) product *= f(n);
-    return product;
-  }
-  const middle = (from + to) >> 1;
-  return splitProduct(f, from, middle) * splitProduct(f, middle, to);
-}
-
 /** mantissa·2^exponent. */
 export interface Scaled {
   readonly mantissa: bigint;
   readonly exponent: number;
 }
 
-export interface ScaledSplit {
+interface ScaledSplit {
   readonly P: Scaled;
   readonly Q: Scaled;
   readonly T: Scaled;
@@ -75,19 +69,29 @@ const GUARD = 28;
  * relative, sums of positive numbers do not increase a relative error and products add them, so that the error of a range is
  * at most that of its halves and one rounding each: less than 2^20 of them for fewer than 2^24 terms, twice that for a quotient.
  */
-export function splitPositive(terms: SeriesTerms, from: number, to: number, bits: number): ScaledSplit {
+export function splitPositive(
+  terms: SeriesTerms,
+  from: number,
+  to: number,
+  bits: number,
+): { readonly Q: Scaled; readonly T: Scaled } {
+  return splitRounded(terms, from, to, bits + GUARD, false);
+}
+
+const NOTHING: Scaled = { mantissa: 0n, exponent: 0 };
+
+function splitRounded(terms: SeriesTerms, from: number, to: number, bits: number, withP: boolean): ScaledSplit {
   if (to - from <= EXACT) {
-    const { P, Q, T } = splitSeries(terms, from, to);
+    const { P, Q, T } = split(terms, from, to, withP);
     return { P: { mantissa: P, exponent: 0 }, Q: { mantissa: Q, exponent: 0 }, T: { mantissa: T, exponent: 0 } };
   }
   const middle = (from + to) >> 1;
-  const left = splitPositive(terms, from, middle, bits);
-  const right = splitPositive(terms, middle, to, bits);
-  const trimmed = (x: Scaled): Scaled => trim(x, bits + GUARD);
+  const left = splitRounded(terms, from, middle, bits, true);
+  const right = splitRounded(terms, middle, to, bits, withP);
   return {
-    P: trimmed(times(left.P, right.P)),
-    Q: trimmed(times(left.Q, right.Q)),
-    T: trimmed(plus(times(left.T, right.Q), times(left.P, right.T))),
+    P: withP ? trim(times(left.P, right.P), bits) : NOTHING,
+    Q: trim(times(left.Q, right.Q), bits),
+    T: trim(plus(times(left.T, right.Q), times(left.P, right.T)), bits),
   };
 }
 
@@ -102,9 +106,13 @@ function plus(x: Scaled, y: Scaled): Scaled {
   return { mantissa: up(x) + up(y), exponent };
 }
 
+/** Rounded down to about `bits` bits, at least that many. */
 function trim(x: Scaled, bits: number): Scaled {
-  const drop = bitLength(x.mantissa) - bits;
-  return drop <= 0 ? x : { mantissa: x.mantissa >> BigInt(drop), exponent: x.exponent + drop };
+  // The shift is all that short numbers cost.
+  const over = x.mantissa >> BigInt(bits);
+  if (over === 0n) return x;
+  const drop = bitLength(over);
+  return { mantissa: x.mantissa >> BigInt(drop), exponent: x.exponent + drop };
 }
 
 /** x/y with `bits` fraction bits, rounded down; positive x and y. */

@@ -27,7 +27,12 @@ for (const size of sizes) {
     test(`every state, ${size.name} ${theme}`, async ({ page }) => {
       const look = async (name: string): Promise<void> => {
         await page.evaluate(() => scrollTo(0, 0));
-        await page.screenshot({ path: `test-results/screens/${name}-${size.name}-${theme}.png`, fullPage: true });
+        await page.screenshot({ path: `test-results/screens/${name}-${size.name}-${theme}-fold.png` });
+        // The whole page in a window of its own height, so that what keeps to the window's foot is in its place.
+        const height = await page.evaluate(() => document.documentElement.scrollHeight);
+        await page.setViewportSize({ width: size.width, height });
+        await page.screenshot({ path: `test-results/screens/${name}-${size.name}-${theme}.png` });
+        await page.setViewportSize(size);
         expect(await objections(page)).toEqual([]);
         const sideways = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);
         expect(sideways).toBeLessThanOrEqual(0);

@@ -7,7 +7,7 @@ export interface Entry {
   readonly weight: number | null;
   readonly familyKey: string;
   readonly family: string;
-  /** What a search by words looks in: typed text, family, function names, weight; lower case. */
+  /** What a search by words looks in: typed text, family, function names, LaTeX; lower case. */
   readonly words: string;
 }
 
@@ -19,8 +19,7 @@ export function entriesOf(catalogue: Catalogue): readonly Entry[] {
       weight,
       familyKey: family.key,
       family: family.title,
-      words:
-        `${text} ${family.title} ${family.names.join(' ')} ${weight === null ? '' : `weight ${weight}`} ${latex}`.toLowerCase(),
+      words: `${text} ${family.title} ${family.names.join(' ')} ${latex}`.toLowerCase(),
     })),
   );
 }
@@ -45,9 +44,15 @@ export function matching(
   digits: ReadonlyMap<string, string>,
 ): readonly Entry[] {
   const wanted = asDigits(typed);
-  const words = typed.toLowerCase().split(/\s+/).filter(Boolean);
+  const weight = /\bweight\s*(\d+)\b/i.exec(typed);
+  const words = typed
+    .replace(weight?.[0] ?? '', '')
+    .toLowerCase()
+    .split(/\s+/)
+    .filter(Boolean);
   return entries.filter((entry) => {
     if (family !== '' && entry.familyKey !== family) return false;
+    if (weight !== null && entry.weight !== Number(weight[1])) return false;
     if (wanted === null) return words.every((word) => entry.words.includes(word));
     const known = digits.get(entry.text);
     return known !== undefined && beginsWith(known, wanted);

@@ -1,4 +1,5 @@
 /** What a step of a plan will cost and whether the digits can carry it, before it runs. */
+import { vectorsLog10 } from '../evidence/counting.ts';
 import { HOLDS_SURPLUS } from '../evidence/verdict.ts';
 
 export interface StepEstimate {
@@ -13,27 +14,38 @@ export interface StepEstimate {
   readonly digitsNeeded: number;
 }
 
-/** Fewest coefficient digits for which a search is worth its time. */
-const LEAST_COEFFICIENT_DIGITS = 1;
+/** Below this not even coefficients of ±1 and ±2 throughout are recognised. */
+const LEAST_COEFFICIENT_DIGITS = 0.3;
 const USUAL_COEFFICIENT_DIGITS = 2;
 
+/** Digits kept back for the surplus that a relation needs to hold. */
+function keptBack(searches: number): number {
+  return HOLDS_SURPLUS + Math.log10(searches);
+}
+
 /**
- * Digits that the coefficients of a relation among `constants` and the value may have when it is still to hold:
- * HOLDS_SURPLUS digits and the logarithm of the number of searches are kept back, the rest is shared by the numbers.
+ * Digits that all coefficients of a relation among `constants` and the value may have when it is still to hold: the
+ * integer vectors with entries up to 10^h, counted by the ball around them, leave HOLDS_SURPLUS digits and the logarithm
+ * of the number of searches.
  */
 export function carried(trusted: number, constants: number, columns = 1, searches = 1): number {
-  return Math.max(0, (trusted * columns - HOLDS_SURPLUS - Math.log10(searches)) / (constants + 1));
+  const m = constants + 1;
+  const far = 20;
+  const room = trusted * columns - keptBack(searches);
+  return Math.max(0, (room - vectorsLog10(m, far)) / m + far - Math.log10(m) / 2);
 }
 
 /** Trusted digits with which coefficients of `coefficientDigits` digits are recognised. */
 export function digitsToHold(constants: number, coefficientDigits: number, columns = 1, searches = 1): number {
-  return Math.ceil(((constants + 1) * coefficientDigits + HOLDS_SURPLUS + Math.log10(searches)) / columns);
+  const m = constants + 1;
+  return Math.ceil((vectorsLog10(m, coefficientDigits + Math.log10(m) / 2) + keptBack(searches)) / columns);
 }
 
 /** Most constants for which coefficients of `coefficientDigits` digits are recognised. */
 export function largestBasis(trusted: number, coefficientDigits: number, columns = 1, searches = 1): number {
-  const room = trusted * columns - HOLDS_SURPLUS - Math.log10(searches);
-  return Math.max(0, Math.floor(room / coefficientDigits) - 1);
+  let constants = 0;
+  while (digitsToHold(constants + 1, coefficientDigits, columns, searches) <= trusted) constants += 1;
+  return constants;
 }
 
 export function stepEstimate(trusted: number, constants: number, columns = 1, searches = 1): StepEstimate {

@@ -2,7 +2,7 @@
 import { InputError } from '../number/errors.ts';
 import type { RelationOutcome } from '../relation/contract.ts';
 import { algebraicSearch } from './algebraic.ts';
-import { digitsUsed } from './estimate.ts';
+import { digitsFixing, digitsLeaving, digitsUsed } from './estimate.ts';
 import { judge } from './judge.ts';
 import { multiplicativeProblem } from './multiplicative.ts';
 import { type Problem, prepareProblem, type SearchOptions } from './problem.ts';
@@ -44,11 +44,18 @@ function problemOf(request: SearchRequest, options: SearchOptions, onProgress: (
       `The form “${form}” is not known; forms are linear, multiplicative and algebraic.`,
     );
   }
+  const { amongSearches = 1 } = request;
+  if (!Number.isInteger(amongSearches) || amongSearches < 1) {
+    throw new InputError('bad-count', 'The number of searches that this one is of must be a positive whole number.');
+  }
   const problem = prepareProblem(request, options, onProgress);
   return form === 'linear' ? problem : multiplicativeProblem(problem);
 }
 
-/** First with part of the trusted digits; without a relation again with all of them, so that the negative is as strong as they allow. */
+/**
+ * First with part of the trusted digits; without a relation again with all of them, so that the negative is as strong as
+ * they allow. A relation that only then shows is searched for once more with as many digits as leave some to predict.
+ */
 async function search(
   problem: Problem,
   options: SearchOptions,
@@ -58,7 +65,13 @@ async function search(
   const used = digitsUsed(trusted);
   const outcome = await relate(problem, used, problem.method, options, report);
   if (outcome.kind === 'relation' || used >= trusted) return { outcome, digits: used };
-  return { outcome: await relate(problem, trusted, problem.method, options, report), digits: trusted };
+  const whole = await relate(problem, trusted, problem.method, options, report);
+  if (whole.kind === 'relation') {
+    const fewer = digitsLeaving(trusted, digitsFixing(whole.coefficients, problem.columns));
+    const again = fewer > used ? await relate(problem, fewer, problem.method, options, report) : outcome;
+    if (again.kind === 'relation') return { outcome: again, digits: fewer };
+  }
+  return { outcome: whole, digits: trusted };
 }
 
 function reporter(options: SearchOptions, start: number): Report {

@@ -8,7 +8,8 @@ import { approximate, elementaryValue, isAlgebraic, isRealElementary } from './a
 import { type Angle, clausenAt, clausenOne, multipleOfPi, reduceAngle } from './clausen.ts';
 import type { EvaluationContext, Family } from './family.ts';
 import { orderAndArgument, pointOf } from './polylog.ts';
-import { acceleratedSums, bitsPerTerm, directOdd, type Point } from './polylog-kernels.ts';
+import { acceleratedSums, bitsPerTerm, type Point } from './polylog-kernels.ts';
+import { directOdd } from './power-series.ts';
 import { call, rational, type Term } from './term.ts';
 import { termLatex } from './term-latex.ts';
 import { termText } from './term-text.ts';

@@ -18,10 +18,10 @@ import {
   withBits,
 } from '../number/ball.ts';
 import { toComplex } from '../number/complex.ts';
-import { agm, geometricMean, root } from '../number/elementary.ts';
 import { InputError } from '../number/errors.ts';
 import { absolute } from '../number/integer.ts';
 import { piBall } from '../number/reduction.ts';
+import { agm, geometricMean, root } from '../number/roots.ts';
 import { toAccuracy } from './accurate.ts';
 import { compareSample, elementaryArgument, elementaryValue, isRealElementary } from './arguments.ts';
 import type { Family } from './family.ts';

@@ -19,10 +19,11 @@ import {
   timesPowerOfTwo,
   widen,
 } from '../number/ball.ts';
-import { agm, exp, log, root, sinCos } from '../number/elementary.ts';
+import { exp, log, sinCos } from '../number/elementary.ts';
 import { InputError } from '../number/errors.ts';
 import { bitLength } from '../number/integer.ts';
 import { piBall } from '../number/reduction.ts';
+import { agm, root } from '../number/roots.ts';
 import { scaledQuotient, splitPositive } from '../number/splitting.ts';
 import { toAccuracy } from './accurate.ts';
 import { type Fraction, factorial, fraction } from './exact.ts';

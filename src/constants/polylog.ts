@@ -22,7 +22,8 @@ import {
 import { type Angle, bernoulliPart, clausenAt, LARGEST_BERNOULLI, multipleOfPi, reduceAngle } from './clausen.ts';
 import { bernoulliNumbers, binomial, type Fraction, factorial } from './exact.ts';
 import type { EvaluationContext, Family } from './family.ts';
-import { acceleratedSums, bitsPerTerm, directSums, goldenSums, type Point } from './polylog-kernels.ts';
+import { acceleratedSums, bitsPerTerm, type Point } from './polylog-kernels.ts';
+import { directSums, goldenSums } from './power-series.ts';
 import { goldenPower, type Quadratic, quadraticOf } from './quadratic.ts';
 import { rootOfUnity } from './sums/roots.ts';
 import { call, rational, type Term } from './term.ts';

@@ -3,9 +3,10 @@
 import * as real from './ball.ts';
 import { type Ball, fromInteger, magnitude, sign, sqrt as sqrtReal } from './ball.ts';
 import { add, type ComplexBall, divide, isComplex, multiply, negate, subtract, type Value } from './complex.ts';
-import { atan2, atan as atanReal, exp as expReal, log as logReal, root as rootReal, sinCos } from './elementary.ts';
+import { atan2, atan as atanReal, exp as expReal, log as logReal, sinCos } from './elementary.ts';
 import { PrecisionError } from './errors.ts';
 import { piBall } from './reduction.ts';
+import { root as rootReal } from './roots.ts';
 
 export const I: ComplexBall = { re: fromInteger(0n), im: fromInteger(1n) };
 const ZERO = fromInteger(0n);

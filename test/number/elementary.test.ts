@@ -3,9 +3,10 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import * as ball from '../../src/number/ball.ts';
-import { agm, atan, atan2, exp, integerRoot, log, root, sinCos } from '../../src/number/elementary.ts';
+import { atan, atan2, exp, log, sinCos } from '../../src/number/elementary.ts';
 import { absolute } from '../../src/number/integer.ts';
 import { logTwo, piBall, SMOOTH_PRIMES, smoothLog } from '../../src/number/reduction.ts';
+import { agm, integerRoot, root } from '../../src/number/roots.ts';
 
 const SEED = 20_260_101;
 const anyBits = fc.integer({ min: 4, max: 900 });

@@ -2,7 +2,7 @@
  * Polylogarithms Li_s(x) at elementary x; on the cut x > 1 the value continued from below, Im Li_s(x) = −π log^{s−1} x/(s − 1)!.
  *
  * Methods: ζ at 1; residues modulo the order at roots of unity (clausen.ts); Fibonacci numbers at ±φ^−m; the direct sum at
- * rationals |x| ≤ 0.7; acceleration elsewhere with |x| ≤ 3 (polylog-kernels.ts, where the radii are derived); beyond, and on
+ * rationals |x| ≤ 0.7; acceleration elsewhere with |x| ≤ 3 (polylog-kernels.ts and power-series.ts, where the radii are derived); beyond, and on
  * the cut, inversion: Li_s(z) = −(2πi)^s/s! B_s(1/2 + log(−z)/2πi) − (−1)^s Li_s(1/z) in ball arithmetic.
  */
 import { type Ball, fromInteger, negate as negateReal, timesPowerOfTwo } from '../number/ball.ts';

@@ -58,7 +58,7 @@ function hornerFixed(coefficients: readonly bigint[], z: bigint, bits: bigint): 
   return sum;
 }
 
-/** z^n for 0 ≤ z < 1, n ≥ 1; each product is short by less than one unit and factors stay below 1, so z^n is short by less than 2 log₂ n + 1 < 3 units after the factor 1/4 of later products. */
+/** z^n for 0 ≤ z < 1/4, n ≥ 1, short by less than 2 units: a product of two such errs by less than (2 + 2)/4 and its own floor. */
 function powerFixed(z: bigint, n: number, bits: bigint): bigint {
   let result: bigint | undefined;
   let base = z;

@@ -8,11 +8,14 @@ import { checkRecord } from '../search/check.ts';
 import type { SearchRequest } from '../search/request.ts';
 import { runSearch } from '../search/run.ts';
 import { evaluateToDigits } from '../worker/tasks.ts';
+import { runBatch } from './batch.ts';
 
 const USAGE = `usage:
   digit-assay search REQUEST.json|-             one record
   digit-assay evaluate 'EXPR' --digits N        digits, correctly rounded to N significant digits
   digit-assay check RECORD.json|-               recomputes everything from the record alone
+  digit-assay batch REQUESTS.jsonl|- --out RECORDS.jsonl [--workers K] [--shard I/N] [--resume]
+                                                a record a line, on all cores; goes on after an interruption
   digit-assay constants [--family KEY]          the catalogue as JSON`;
 
 /** Largest file read, in bytes. */
@@ -81,10 +84,34 @@ async function check(path: string | undefined): Promise<number> {
   return result.ok ? 0 : 1;
 }
 
+async function batch(
+  path: string | undefined,
+  options: { out?: string; workers?: string; shard?: string; resume?: boolean },
+): Promise<number> {
+  const { out, workers, shard, resume = false } = options;
+  if (out === undefined) throw new InputError('usage', 'Name the file for the records with --out.');
+  const result = await runBatch(readInput(path, 'requests'), { out, workers, shard, resume });
+  print(result);
+  if (result.failed > 0)
+    throw new InputError(
+      'failed-lines',
+      `${result.failed} of ${result.requests} requests have no record; ${out} says why.`,
+    );
+  return result.negative > 0 ? 1 : 0;
+}
+
 async function main(args: readonly string[]): Promise<number> {
   const { values, positionals } = parseArgs({
     args: [...args],
-    options: { digits: { type: 'string' }, family: { type: 'string' }, help: { type: 'boolean', short: 'h' } },
+    options: {
+      digits: { type: 'string' },
+      family: { type: 'string' },
+      out: { type: 'string' },
+      workers: { type: 'string' },
+      shard: { type: 'string' },
+      resume: { type: 'boolean' },
+      help: { type: 'boolean', short: 'h' },
+    },
     allowPositionals: true,
   });
   const [command, first, ...more] = positionals;
@@ -100,6 +127,8 @@ async function main(args: readonly string[]): Promise<number> {
       return evaluate(first, values.digits);
     case 'check':
       return check(first);
+    case 'batch':
+      return batch(first, values);
     case 'constants':
       print(catalogue(values.family));
       return 0;

@@ -14,7 +14,7 @@ test('a constant is found by its first digits, by weight and by family', async (
   await expect(page.locator('.constants')).toContainText('catalan', { timeout: 30_000 });
   await search.fill('weight 3 clausen');
   await expect(page.locator('.constants li').first()).toContainText('Cl(3,');
-  await page.getByLabel('Family').selectOption({ label: 'Bessel moments' });
+  await page.getByLabel('Family', { exact: true }).selectOption({ label: 'Bessel moments' });
   await search.fill('');
   await expect(page.locator('.constants li').first()).toContainText('bessel(');
 });

@@ -1,4 +1,5 @@
 /** Bases to try on a value of which nothing is known but a largest weight: growing by weight, alphabet and factor. */
+import { InputError } from '../number/errors.ts';
 import { spaceOf } from '../spaces/registry.ts';
 import type { PlanBasis } from './plan.ts';
 
@@ -38,9 +39,12 @@ const GAMMAS = ['Gamma(1/24)', 'Gamma(5/24)', 'Gamma(7/24)', 'Gamma(11/24)', 'Ga
 /**
  * The rungs in the order in which they are to be climbed. Each weight first among multiple zeta values, then with
  * alternating sums, then at roots of unity, then with the factors √3, 1/π and √3/π; then units of quadratic fields, gamma
- * values at rationals, and algebraic numbers. Bases contain everything of lower weight, so that mixed weights are found.
+ * values at rationals, and algebraic numbers. Throws InputError for a weight that is none. Bases contain everything of lower weight, so that mixed weights are found.
  */
 export function ladderBases(maxWeight: number): readonly PlanBasis[] {
+  if (!Number.isInteger(maxWeight) || maxWeight < 0) {
+    throw new InputError('bad-weight', 'The largest weight of a ladder must be a whole number from 0 on.');
+  }
   const rungs: PlanBasis[] = [{ title: 'rational', basis: ['1'] }];
   const add = (title: string, basis: readonly string[]): void => void rungs.push({ title, basis: [...new Set(basis)] });
   for (let w = 2; w <= Math.min(maxWeight, 12); w++) add(`multiple zeta values, weight ≤ ${w}`, upTo('mzv', w, 'real'));

@@ -32,6 +32,8 @@ export interface PlanOptions {
   readonly execute: Execute;
   /** Searches at the same time; default 1. */
   readonly lanes?: number;
+  /** The plan's steps where they have been laid out already, in a worker for example. */
+  readonly steps?: readonly PlanStep[];
   /** Records of an earlier run of the same plan. */
   readonly finished?: Readonly<Record<string, SearchRecord>>;
   /** After every change of a step. */
@@ -59,7 +61,7 @@ const HOLDS = 'A relation that holds has been found for this value.';
 
 /** Lays a plan out and makes it ready to run. Throws InputError as `layOut`. */
 export function createPlan(spec: PlanSpec, options: PlanOptions): PlanRun {
-  const steps = layOut(spec);
+  const steps = options.steps ?? layOut(spec);
   const states = new Map<string, StepState>(steps.map((step) => [step.key, first(step, options.finished)]));
   const lanes = Math.max(1, options.lanes ?? 1);
   const running = new Map<string, AbortController>();

@@ -1,5 +1,8 @@
 /** The one list of what a page (or a Node parent) can ask of an engine worker. Both ends are checked against it. */
+import type { Advice } from '../search/advice.ts';
 import type { Catalogue } from '../search/catalogue.ts';
+import type { LedgerEntry, LedgerHit } from '../search/ledger.ts';
+import type { PlanSpec, PlanStep, PlanValue } from '../search/plan.ts';
 import type { SearchProgress, SearchRecord } from '../search/record.ts';
 import type { BasisSpec, SearchRequest } from '../search/request.ts';
 import type { Rewritten } from '../search/rewrite.ts';
@@ -34,6 +37,24 @@ export interface EngineTasks {
   catalogue: { request: Record<string, never>; response: Catalogue; progress: never };
   /** A typed constant written exactly in the elements of a space. */
   rewrite: { request: { text: string; space: string }; response: Rewritten; progress: never };
+  /** The steps of a plan, with what each will cost; for a ladder from nothing give the largest weight instead of its bases. */
+  plan: {
+    request: { spec: PlanSpec } | { value: PlanValue; maxWeight: number };
+    response: { spec: PlanSpec; steps: readonly PlanStep[] };
+    progress: never;
+  };
+  /** What to try after a record without a relation that holds. */
+  advice: {
+    request: { record: SearchRecord; tried: readonly BasisSpec[] };
+    response: { advice: readonly Advice[] };
+    progress: never;
+  };
+  /** Earlier values and findings that a new value is a multiple of, up to one more constant. */
+  ledger: {
+    request: { value: Pick<SearchRequest, 'value' | 'trustedDigits'>; entries: readonly LedgerEntry[] };
+    response: { hits: readonly LedgerHit[] };
+    progress: never;
+  };
   /** Compute part `part` of `parts` of the constants of a search and store them; does nothing without a store. */
   compute: {
     request: { search: SearchRequest; part: number; parts: number };

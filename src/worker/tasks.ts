@@ -10,10 +10,14 @@ import { isComplex, type Value } from '../number/complex.ts';
 import { formatBall, parseDecimal } from '../number/decimal.ts';
 import { InputError, PrecisionError } from '../number/errors.ts';
 import { absolute, log10Of } from '../number/integer.ts';
+import { whatNext } from '../search/advice.ts';
 import { readTyped, resolveBasis } from '../search/basis.ts';
 import { catalogue } from '../search/catalogue.ts';
 import { checkRecord } from '../search/check.ts';
 import { readValue } from '../search/intake.ts';
+import { ladderBases } from '../search/ladder.ts';
+import { consult } from '../search/ledger.ts';
+import { layOut, type PlanSpec } from '../search/plan.ts';
 import { constantBits, GUARD_BITS } from '../search/problem.ts';
 import type { SearchRequest } from '../search/request.ts';
 import { rewrite } from '../search/rewrite.ts';
@@ -127,6 +131,15 @@ export const tasks: Tasks = {
     return { computed: share.length };
   },
   rewrite: async ({ text, space }) => rewrite(text, space),
+  plan: async (request) => {
+    const spec: PlanSpec =
+      'spec' in request
+        ? request.spec
+        : { kind: 'ladder', value: request.value, bases: ladderBases(request.maxWeight) };
+    return { spec, steps: layOut(spec) };
+  },
+  advice: async ({ record, tried }) => ({ advice: whatNext(record, tried) }),
+  ledger: async ({ value, entries }, { signal, cache }) => ({ hits: await consult(value, entries, { signal, cache }) }),
   check: ({ record }, { signal, onProgress, cache }) => checkRecord(record, { signal, onProgress, cache }),
 };
 

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { ConstantCache } from '../../src/constants/cache.ts';
 import { dropDependent, withoutConstant } from '../../src/search/drop.ts';
 import { ladderBases } from '../../src/search/ladder.ts';
-import { layOut, type PlanSpec } from '../../src/search/plan.ts';
+import { COMMON_FACTORS, layOut, type PlanSpec } from '../../src/search/plan.ts';
 import { digitsToHold, largestBasis, stepEstimate } from '../../src/search/plan-cost.ts';
 import { createPlan, type Execute, type PlanRun } from '../../src/search/plan-run.ts';
 import { runSearch } from '../../src/search/run.ts';
@@ -84,6 +84,18 @@ describe('running', () => {
     expect(plan.steps[hit]?.title).toContain('alternating sums, weight ≤ 3');
     for (const s of states.slice(0, hit)) expect(s.kind === 'done' && s.record.verdict).toBe('excluded');
     expect(new Set(states.slice(hit + 1).map((s) => s.kind))).toEqual(new Set(['skipped']));
+  });
+
+  it('finds the factor that a value has to be divided by', async () => {
+    const value = { name: 'v', value: digitsOf('sqrt(3)*(2*zeta(3)-5*pi^2/7)', 60) };
+    const basis = { title: 'weight ≤ 3', basis: ['pi^2', 'zeta(3)'] };
+    const plan = createPlan({ kind: 'factors', value, factors: COMMON_FACTORS, basis }, { execute });
+    await plan.start();
+    const hits = plan.steps.filter((step) => {
+      const state = plan.state(step.key);
+      return state.kind === 'done' && state.record.verdict === 'holds';
+    });
+    expect(hits.map((step) => step.request.divideBy)).toEqual(['sqrt(3)']);
   });
 
   it('pauses between steps and goes on after a reload without repeating a search', async () => {

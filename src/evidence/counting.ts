@@ -1,4 +1,5 @@
 /** How many integer vectors there are: what a relation's coefficients could encode by chance. */
+import { log10BallVolume } from '../relation/significance.ts';
 
 /** Above this many the volume of the ball is used instead of counting. */
 const EXACT_LIMIT = 2000;
@@ -13,14 +14,7 @@ export function vectorsLog10(m: number, normLog10: number): number {
   const squared = 10 ** (2 * normLog10);
   if (squared <= EXACT_LIMIT) return Math.log10(Math.max(1, (countUpTo(m, Math.round(squared)) - 1) / 2));
   const radius = normLog10 > 8 ? normLog10 : Math.log10(squared + m / 12) / 2;
-  return ballVolumeLog10(m) + m * radius - Math.log10(2);
-}
-
-/** log10 of the volume of the unit ball in m dimensions: V(m) = V(m−2)·2π/m. */
-function ballVolumeLog10(m: number): number {
-  let log = m % 2 === 0 ? 0 : Math.log10(2);
-  for (let k = m % 2 === 0 ? 2 : 3; k <= m; k += 2) log += Math.log10((2 * Math.PI) / k);
-  return log;
+  return log10BallVolume(m) + m * radius - Math.log10(2);
 }
 
 /** Integer vectors of dimension m with squared norm at most s, the zero vector included, by convolving with the squares. */

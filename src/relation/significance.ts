@@ -1,5 +1,5 @@
 /** Could this relation be chance? Counting arguments shared by both methods. */
-import { absolute, bitLength, log10Of } from '../number/integer.ts';
+import { absolute, bitLength, gcdOf, log10Of } from '../number/integer.ts';
 import { log10Determinant, plusRow } from './gram.ts';
 import type { Prepared } from './prepare.ts';
 
@@ -97,12 +97,7 @@ export function log10Norm(coefficients: readonly bigint[]): number {
 
 /** The vector divided by its content, first non-zero entry positive. */
 export function primitive(coefficients: readonly bigint[]): bigint[] {
-  let content = 0n;
-  for (const c of coefficients) {
-    let [a, b] = [content, absolute(c)];
-    while (b !== 0n) [a, b] = [b, a % b];
-    content = a;
-  }
+  const content = gcdOf(coefficients);
   if (content === 0n) throw new RangeError('primitive: expected a non-zero vector');
   const first = coefficients.find((c) => c !== 0n) as bigint;
   const divisor = first < 0n ? -content : content;

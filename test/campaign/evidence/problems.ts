@@ -37,6 +37,10 @@ const WEIGHTS: Readonly<Record<string, number>> = {
   'degree-30-algebraic': 1,
 };
 
+const ABOUT = `# Published values by the ladder
+
+Each value of \`test/reference/problems-open.json\` (sources there), searched from its digits and "weight at most its weight" alone: bases grow by weight and alphabet until one holds. The rungs were laid out knowing these problems, so this is a check and not a blind test. Written by \`TABLE=docs/ladder.md npm run campaign:evidence -- part=problems\`; seconds are of one run on a shared two-core machine.`;
+
 /** Prints the table of the project's docs; `TABLE=FILE` in the environment writes it there as well. */
 export async function problems(): Promise<boolean> {
   const { problems: all } = JSON.parse(readFileSync('test/reference/problems-open.json', 'utf8')) as {
@@ -69,7 +73,7 @@ export async function problems(): Promise<boolean> {
   const head =
     '| problem | form | weight ≤ | searches | rung that holds | surplus digits | seconds |\n|---|---|---|---|---|---|---|';
   const table = `${head}\n${rows.join('\n')}\n`;
-  if (process.env.TABLE !== undefined) writeFileSync(process.env.TABLE, table);
+  if (process.env.TABLE !== undefined) writeFileSync(process.env.TABLE, `${ABOUT}\n\n${table.trim()}\n`);
   console.log(`  ${rows.length} problems, ${missed} not recognised`);
   return missed === 0;
 }

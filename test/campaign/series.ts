@@ -1,8 +1,8 @@
 /**
  * Campaign of series and intake: node .ci/run-ts.mjs test/campaign/series.ts [--count 200] [--texts 50000] [--seed N]
  *
- * Random products of factors are expanded here and by PARI/GP (left out with a note where `gp` is absent), and random series
- * times such a factor are compared with PARI's product; generated texts come back to their digits, spoilt ones are refused.
+ * Random products of factors are expanded here and by PARI/GP (left out with a note where `gp` is absent); generated texts come
+ * back to their digits, spoilt ones are refused.
  */
 import { spawnSync } from 'node:child_process';
 import { parseTerm } from '../../src/expression/parse.ts';
